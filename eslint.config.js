@@ -59,7 +59,7 @@ export default tseslint.config(
   wall(['shared/data/**/*.ts'], '^(?!\\.{1,2}/)|/contract/|/server/|/src/|/physics/', 'Data import nothing.'),
   wall(
     ['shared/contract/**/*.ts'],
-    '^(?!\\.{1,2}/|zod$|@asteasolutions/zod-to-openapi$)|/server/|/src/|/physics/',
+    '^(?!\\.{1,2}/|zod$)|/server/|/src/|/physics/',
     'The contract imports only zod.',
   ),
   wall(['src/**/*.{ts,vue}'], '/server/|^node:', 'The client reaches the server only through src/api and the contract.'),
