@@ -1,0 +1,5 @@
+export { beerLambertStack, opticalDepth, type BeerLambertLayer, type BeerLambertOptics } from './beerLambertStack.js'
+export { assertAngle, fresnelReflectance, type FresnelReflectance } from './fresnel.js'
+export { incoherentSlab, lambertianAbsorptance, lambertianPathFactor, type SlabOptics } from './incoherentSlab.js'
+export { type Dispersion, type OpticalStack, type Polarisation, type StackLayer, type StackOptics } from './stack.js'
+export { StackSolver, transferMatrix } from './stackSolver.js'
