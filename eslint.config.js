@@ -53,8 +53,8 @@ export default tseslint.config(
   // One direction only. `shared` imports neither side; the engine imports only data and itself.
   wall(
     ['shared/physics/**/*.ts'],
-    '^(?!\\.{1,2}/)|/contract/|/server/|/src/',
-    'The engine is pure: it imports only itself and shared/data.',
+    '^(?!\\.{1,2}/|yalps$)|/contract/|/server/|/src/',
+    'The engine is pure: it imports only itself, shared/data and the linear programme solver yalps.',
   ),
   wall(['shared/data/**/*.ts'], '^(?!\\.{1,2}/)|/contract/|/server/|/src/|/physics/', 'Data import nothing.'),
   wall(
