@@ -1,0 +1,38 @@
+import type { SpectrumChoice } from '../../shared/contract/spectra.js'
+
+/** Keys of all server state, by resource. What lies under `project` is refreshed together after a change to it. */
+export const queryKeys = {
+  sessions: ['account', 'sessions'],
+  projects: ['projects'],
+  projectList: (include: string) => ['projects', include],
+  waiting: (projectIds: readonly string[]) => ['projects', 'waiting', ...projectIds],
+  project: (projectId: string) => ['project', projectId],
+  projectItself: (projectId: string) => ['project', projectId, 'itself'],
+  devices: (projectId: string, choice: SpectrumChoice) => ['project', projectId, 'devices', choice],
+  device: (projectId: string, deviceId: string) => ['project', projectId, 'device', deviceId],
+  deletedDevices: (projectId: string) => ['project', projectId, 'deleted-devices'],
+  matching: (projectId: string, deviceId: string, choice: SpectrumChoice) => [
+    'project',
+    projectId,
+    'matching',
+    deviceId,
+    choice,
+  ],
+  curves: (projectId: string, deviceId: string) => ['project', projectId, 'curves', deviceId],
+  scans: (projectId: string, filter: object) => ['project', projectId, 'scans', filter],
+  scan: (projectId: string, scanId: string) => ['project', projectId, 'scan', scanId],
+  sourceFiles: (projectId: string, state: string) => ['project', projectId, 'source-files', state],
+  sourceFile: (projectId: string, sourceFileId: string) => ['project', projectId, 'source-file', sourceFileId],
+  members: (projectId: string) => ['project', projectId, 'members'],
+  invitations: (projectId: string) => ['project', projectId, 'invitations'],
+  activity: (projectId: string, filter: object) => ['project', projectId, 'activity', filter],
+  spectra: (projectId: string) => ['spectra', projectId],
+  spectrumList: (projectId: string) => ['spectra', projectId, 'list'],
+  spectrum: (projectId: string, spectrumId: string) => ['spectra', projectId, 'one', spectrumId],
+  invitationLink: (token: string) => ['invitation', token],
+  administration: ['administration'],
+  accounts: ['administration', 'accounts'],
+  outbox: ['administration', 'outbox'],
+  health: ['administration', 'health'],
+  audit: (filter: object) => ['administration', 'audit', filter],
+} as const
