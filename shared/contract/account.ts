@@ -19,7 +19,7 @@ export const Session = z
     installation: z.object({
       needsFirstAdministrator: z.boolean(),
       demonstrationPeople: z
-        .array(z.object({ name: z.string(), email: z.string(), role: z.string() }))
+        .array(z.object({ name: z.string(), email: z.string(), role: z.string(), password: z.string() }))
         .meta({ description: 'Sign-ins of the demonstration; empty on a real installation' }),
       mailDelivery: z.enum(['smtp', 'outbox']),
     }),
