@@ -31,10 +31,10 @@ export function budgetProblems(budget: UncertaintyBudget): BudgetProblem[] {
   return problems
 }
 
-/** @throws DomainError with the first problem of the budget; `argument` names the place. */
-export function assertBudget(budget: UncertaintyBudget): void {
+/** @throws DomainError with the first problem of the budget; its `argument` is the place, after `prefix`. */
+export function assertBudget(budget: UncertaintyBudget, prefix = ''): void {
   const first = budgetProblems(budget)[0]
-  if (first) throw new DomainError(first.path, first.message)
+  if (first) throw new DomainError(prefix + first.path, first.message)
 }
 
 function componentProblems(component: BudgetComponent, path: string): BudgetProblem[] {

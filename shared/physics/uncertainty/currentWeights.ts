@@ -23,7 +23,7 @@ const MA_CM2_PER_PRODUCT = 1 / (10 * PHOTON_ENERGY_NM_EV)
 export function currentWeights(wavelengthNm: Float64Array, irradiance: Curve, shiftNm = 0): Float64Array {
   assertCurve(irradiance, 'irradiance')
   assertGrid(wavelengthNm)
-  return weightsOf(wavelengthNm, irradiance.wavelengthNm, irradiance.values, shiftNm)
+  return uncheckedCurrentWeights(wavelengthNm, irradiance, shiftNm)
 }
 
 function assertGrid(wavelengthNm: Float64Array): void {
@@ -34,7 +34,9 @@ function assertGrid(wavelengthNm: Float64Array): void {
       throw new DomainError('wavelengthNm', `wavelengthNm[${i}] = ${wavelengthNm[i]} is not above the point before it.`)
 }
 
-function weightsOf(eqeNm: Float64Array, sunNm: Float64Array, sun: Float64Array, shiftNm: number): Float64Array {
+/** `currentWeights` for a grid and a spectrum that were checked before: many offsets of one curve. */
+export function uncheckedCurrentWeights(eqeNm: Float64Array, irradiance: Curve, shiftNm: number): Float64Array {
+  const { wavelengthNm: sunNm, values: sun } = irradiance
   const weights = new Float64Array(eqeNm.length)
   const lastSun = sunNm.length - 1
   let j = 0

@@ -3,7 +3,7 @@ import type { Curve } from '../curve.js'
 import { DomainError } from '../errors.js'
 import type { BudgetComponent, ComponentKind, ErrorDistribution, StandardUncertainty } from './budget.js'
 import { assertBudget } from './budgetProblems.js'
-import { currentWeights, weightedSum } from './currentWeights.js'
+import { currentWeights, uncheckedCurrentWeights, weightedSum } from './currentWeights.js'
 
 /** One junction of a device with the scan that measured it and the budget that applies to that scan. */
 export interface MeasuredJunction {
@@ -109,7 +109,7 @@ export function deviceErrors(junctions: readonly MeasuredJunction[], irradiance:
 /** J of one junction with its curve moved by `shiftNm` towards longer wavelengths, mA cm⁻²; exact, O(n + m). */
 export function shiftedCurrent(errors: DeviceErrors, junction: number, shiftNm: number): number {
   const eqe = errors.eqe[junction]!
-  return weightedSum(currentWeights(eqe.wavelengthNm, errors.irradiance, shiftNm), eqe.values)
+  return weightedSum(uncheckedCurrentWeights(eqe.wavelengthNm, errors.irradiance, shiftNm), eqe.values)
 }
 
 /** `√Σ c_k²`: standard uncertainty of the current from points that err independently. */
@@ -122,7 +122,7 @@ export function rootSumOfSquares(values: ArrayLike<number>): number {
 function assertJunction(junction: MeasuredJunction, index: number): void {
   const name = `junctions[${index}]`
   assertCurve(junction.eqe, `${name}.eqe`)
-  assertBudget(junction)
+  assertBudget(junction, `${name}.`)
   const points = junction.pointUncertainty
   if (points === null) return
   if (points.length !== junction.eqe.values.length)

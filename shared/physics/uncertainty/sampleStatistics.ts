@@ -7,19 +7,37 @@ export interface SampleSummary {
   readonly interval95: readonly [number, number]
 }
 
+/** Values beyond this many standard deviations are looked through for the ends of the interval. */
+const TAIL_CUT = 1.5
+
 /** Mean, standard deviation and 95 % interval of a sample of at least 40 values. The sample is not changed. O(n). */
 export function summarise(sample: Float64Array): SampleSummary {
   const count = sample.length
   const mean = meanOf(sample)
   let squares = 0
   for (let i = 0; i < count; i++) squares += (sample[i]! - mean) * (sample[i]! - mean)
+  const uncertainty = Math.sqrt(squares / (count - 1))
   const inside = Math.round(0.95 * count)
   const below = Math.round((count - inside) / 2)
-  const work = sample.slice()
-  // 1-based r and r + q of the standard are these two places.
-  const low = orderStatistic(work, Math.max(0, below - 1), 0, count - 1)
-  const high = orderStatistic(work, Math.min(count - 1, below - 1 + inside), below, count - 1)
-  return { mean, uncertainty: Math.sqrt(squares / (count - 1)), interval95: [low, high] }
+  // The standard's y_(r) and y_(r+q), counted from 1, are these ranks from the bottom.
+  const low = valueOfRank(sample, Math.max(0, below - 1), mean, uncertainty)
+  const high = valueOfRank(sample, Math.min(count - 1, below - 1 + inside), mean, uncertainty)
+  return { mean, uncertainty, interval95: [low, high] }
+}
+
+/** The value with `rank` values below it. It mostly lies in a tail, which is then all that needs to be ordered. */
+function valueOfRank(sample: Float64Array, rank: number, mean: number, uncertainty: number): number {
+  const fromTop = sample.length - 1 - rank
+  const lowTail = rank < fromTop
+  const cut = mean + (lowTail ? -TAIL_CUT : TAIL_CUT) * uncertainty
+  const tail = new Float64Array(sample.length)
+  let size = 0
+  for (let i = 0; i < sample.length; i++) {
+    const value = sample[i]!
+    if (lowTail ? value <= cut : value >= cut) tail[size++] = value
+  }
+  if (size > (lowTail ? rank : fromTop)) return orderStatistic(tail, lowTail ? rank : size - 1 - fromTop, size - 1)
+  return orderStatistic(sample.slice(), rank, sample.length - 1)
 }
 
 function meanOf(sample: Float64Array): number {
@@ -51,10 +69,10 @@ export function sampleCorrelation(samples: readonly Float64Array[]): number[][] 
   )
 }
 
-/** The value of the given rank (0-based) between two places; reorders `values` (Hoare's selection, median of three). */
-function orderStatistic(values: Float64Array, rank: number, from: number, to: number): number {
-  let left = from
-  let right = to
+/** The value of a rank among the places 0 … last; reorders `values` (Hoare's selection, median of three). */
+function orderStatistic(values: Float64Array, rank: number, last: number): number {
+  let left = 0
+  let right = last
   while (right > left) {
     const a = values[left]!
     const b = values[(left + right) >> 1]!

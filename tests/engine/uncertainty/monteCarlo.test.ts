@@ -87,6 +87,11 @@ describe('summary of a sample', () => {
     expect(values[1]).toBe(388)
   })
 
+  it('finds the ends of the interval also where they are not in a tail: nearly all values equal', () => {
+    const values = Float64Array.from({ length: 1000 }, (_, i) => (i === 500 ? 1e6 : i === 501 ? -1 : 7))
+    expect(summarise(values).interval95).toEqual([7, 7])
+  })
+
   it('keeps ties and constants', () => {
     expect(summarise(new Float64Array(100).fill(4))).toEqual({ mean: 4, uncertainty: 0, interval95: [4, 4] })
   })

@@ -174,6 +174,15 @@ describe('special devices', () => {
       'has 3 values for 300 points',
     ],
     [
+      'a budget with a slip, at the place of the slip',
+      () =>
+        deviceErrors(
+          [tandem()[0]!, measured(band(770, 1120, 0.9), [component({ id: 'x', degreesOfFreedom: -1 })])],
+          sun,
+        ),
+      'degrees of freedom are -1',
+    ],
+    [
       'two distributions for one error',
       () =>
         deviceErrors(
