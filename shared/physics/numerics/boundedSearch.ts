@@ -90,7 +90,7 @@ export function minimiseInBounds(
   const looked = first.map((unit) => ({ unit, value: evaluate(unit) })).sort((a, b) => a.value - b.value)
   const tolerance = options.tolerance ?? 1e-9
   for (const { unit, value } of looked.slice(0, options.starts ?? 5)) {
-    let best = { unit, value }
+    let best: { unit: readonly number[]; value: number } = { unit, value }
     for (let round = 0, size = 0.15; round < 8; round++, size *= round % 2 === 0 ? 0.35 : -0.7) {
       const found = nelderMead(evaluate, best.unit, best.value, size, tolerance)
       const gained = best.value - found.value
