@@ -1,10 +1,11 @@
-import { useQuery } from '@tanstack/vue-query'
+import { useQuery, useQueryClient } from '@tanstack/vue-query'
 import { computed, toValue, type MaybeRefOrGetter } from 'vue'
 import type { Role } from '../../shared/contract/rights.js'
 import type { acceptInvitation, createInvitation } from '../../shared/contract/projects.js'
 import type { BodySent } from '../../shared/contract/route.js'
 import { everyItem } from '../api/pages.js'
 import * as api from '../api/projects.js'
+import { useSessionStore } from '../stores/session.js'
 import { useChange } from './change.js'
 import { queryKeys } from './queryKeys.js'
 import { useRefresh } from './refresh.js'
@@ -68,10 +69,15 @@ export function useInvitationLink(token: MaybeRefOrGetter<string>) {
   })
 }
 
+/** Accepting signs the person in. */
 export function useAcceptInvitation(token: MaybeRefOrGetter<string>) {
-  const refresh = useRefresh()
+  const client = useQueryClient()
+  const session = useSessionStore()
   return useChange(
     (body: BodySent<typeof acceptInvitation>) => api.acceptInvitation(toValue(token), body),
-    () => refresh.projects(),
+    async () => {
+      client.removeQueries()
+      await session.reread()
+    },
   )
 }
