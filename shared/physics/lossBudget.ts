@@ -1,7 +1,8 @@
-import { assertCurve, valueAt } from './curve.js'
+import { assertCurve, rangeNm, valueAt } from './curve.js'
 import type { Curve } from './curve.js'
 import { DomainError } from './errors.js'
-import { currentWeights, weightedSum } from './uncertainty/currentWeights.js'
+import { integrateProduct } from './integration.js'
+import type { Spectrum } from './spectrum.js'
 
 /** Where the account of the losses begins, nm. */
 export const LOSS_BUDGET_FROM_NM = 300
@@ -33,7 +34,7 @@ export interface LossAccount {
 }
 
 /** The same as curves over wavelength, to be stacked: at every wavelength they add up to 1. */
-export interface LossSpectrum {
+export interface LossCurves {
   readonly wavelengthNm: Float64Array
   readonly junctions: readonly Float64Array[]
   readonly reflection: Float64Array | null
@@ -46,10 +47,10 @@ export interface LossBudget {
   readonly toNm: number
   readonly whole: LossAccount
   readonly bands: readonly (LossBand & LossAccount)[]
-  readonly spectrum: LossSpectrum
+  readonly curves: LossCurves
   /** Parts of the range without measured reflectance, nm; what is reflected there is counted in the remainder. */
   readonly withoutReflectanceNm: readonly (readonly [number, number])[]
-  /** Wavelengths of `spectrum` at which ΣEQE + R exceeds 1, first and last; null when nowhere. */
+  /** Wavelengths of `curves` at which ΣEQE + R exceeds 1, first and last; null when nowhere. */
   readonly aboveOneNm: readonly [number, number] | null
 }
 
@@ -59,8 +60,7 @@ export interface LossBudgetInput {
   readonly junctions: readonly Curve[]
   /** Reflectance, fraction; null when it was not measured. */
   readonly reflectance: Curve | null
-  /** W m⁻² nm⁻¹. */
-  readonly irradiance: Curve
+  readonly spectrum: Spectrum
   /** Default: `defaultLossBands` of the range. Bands may leave gaps but not overlap. */
   readonly bands?: readonly LossBand[]
   /** Default 300 nm. */
@@ -78,25 +78,24 @@ export interface LossBudgetInput {
  * or bands that are reversed, overlap or leave the range. Cost O(bands · (points + spectrum)).
  */
 export function lossBudget(input: LossBudgetInput): LossBudget {
-  const { junctions, reflectance, irradiance } = input
+  const { junctions, reflectance, spectrum } = input
   if (junctions.length === 0) throw new DomainError('junctions', 'junctions is empty; a device has at least one.')
   junctions.forEach((eqe, i) => assertCurve(eqe, `junctions[${i}]`))
   if (reflectance) assertCurve(reflectance, 'reflectance')
-  assertCurve(irradiance, 'irradiance')
   const fromNm = input.fromNm ?? LOSS_BUDGET_FROM_NM
   const toNm = input.toNm ?? lastEdgeNm(junctions)
-  assertRange(fromNm, toNm, irradiance)
+  assertRange(fromNm, toNm, spectrum)
   const bands = input.bands ?? defaultLossBands(fromNm, toNm)
   assertBands(bands, fromNm, toNm)
-  const spectrum = lossSpectrum(junctions, reflectance, fromNm, toNm)
+  const curves = lossCurves(junctions, reflectance, fromNm, toNm)
   return {
     fromNm,
     toNm,
     whole: account(input, fromNm, toNm),
     bands: bands.map((band) => ({ ...band, ...account(input, band.fromNm, band.toNm) })),
-    spectrum,
+    curves,
     withoutReflectanceNm: reflectance ? uncovered(reflectance, fromNm, toNm) : [[fromNm, toNm]],
-    aboveOneNm: aboveOne(spectrum),
+    aboveOneNm: aboveOne(curves),
   }
 }
 
@@ -128,39 +127,17 @@ export function defaultLossBands(fromNm: number, toNm: number): LossBand[] {
   })
 }
 
-function account({ junctions, reflectance, irradiance }: LossBudgetInput, fromNm: number, toNm: number): LossAccount {
-  const totalMaCm2 = bandCurrent(
-    { wavelengthNm: Float64Array.of(fromNm, toNm), values: Float64Array.of(1, 1) },
-    irradiance,
-    fromNm,
-    toNm,
-  )
-  const junctionsMaCm2 = junctions.map((eqe) => bandCurrent(eqe, irradiance, fromNm, toNm))
-  const reflectionMaCm2 = reflectance && bandCurrent(reflectance, irradiance, fromNm, toNm)
-  const accounted = junctionsMaCm2.reduce((sum, current) => sum + current, reflectionMaCm2 ?? 0)
+function account({ junctions, reflectance, spectrum }: LossBudgetInput, fromNm: number, toNm: number): LossAccount {
+  const current = (curve: Curve): number => integrateProduct(curve, spectrum.photonCurrent, fromNm, toNm)
+  const totalMaCm2 = current({ wavelengthNm: Float64Array.of(fromNm, toNm), values: Float64Array.of(1, 1) })
+  const junctionsMaCm2 = junctions.map(current)
+  const reflectionMaCm2 = reflectance && current(reflectance)
+  const accounted = junctionsMaCm2.reduce((sum, part) => sum + part, reflectionMaCm2 ?? 0)
   return { totalMaCm2, junctionsMaCm2, reflectionMaCm2, remainderMaCm2: totalMaCm2 - accounted }
 }
 
-/** `q ∫ f φ dλ` over the part of a curve between two wavelengths, cut there by interpolation, mA cm⁻². */
-function bandCurrent(curve: Curve, irradiance: Curve, fromNm: number, toNm: number): number {
-  const start = Math.max(fromNm, curve.wavelengthNm[0]!)
-  const end = Math.min(toNm, curve.wavelengthNm[curve.wavelengthNm.length - 1]!)
-  if (!(end > start)) return 0
-  const inside = curve.wavelengthNm.filter((nm) => nm > start && nm < end)
-  const grid = Float64Array.of(start, ...inside, end)
-  return weightedSum(
-    currentWeights(grid, irradiance),
-    grid.map((nm) => valueAt(curve, nm)),
-  )
-}
-
 /** Curves on the union of all grids within the range. A scan's end is a step; its last point still counts as measured. */
-function lossSpectrum(
-  junctions: readonly Curve[],
-  reflectance: Curve | null,
-  fromNm: number,
-  toNm: number,
-): LossSpectrum {
+function lossCurves(junctions: readonly Curve[], reflectance: Curve | null, fromNm: number, toNm: number): LossCurves {
   const grids = [...junctions, ...(reflectance ? [reflectance] : [])].flatMap((curve) => [...curve.wavelengthNm])
   const inside = grids.filter((nm) => nm > fromNm && nm < toNm)
   const wavelengthNm = Float64Array.from(new Set([fromNm, ...inside, toNm])).sort()
@@ -174,8 +151,7 @@ function lossSpectrum(
 }
 
 function uncovered(reflectance: Curve, fromNm: number, toNm: number): [number, number][] {
-  const first = reflectance.wavelengthNm[0]!
-  const last = reflectance.wavelengthNm[reflectance.wavelengthNm.length - 1]!
+  const [first, last] = rangeNm(reflectance)
   const gaps: [number, number][] = [
     [fromNm, Math.min(first, toNm)],
     [Math.max(last, fromNm), toNm],
@@ -183,19 +159,18 @@ function uncovered(reflectance: Curve, fromNm: number, toNm: number): [number, n
   return gaps.filter(([start, end]) => end > start)
 }
 
-function aboveOne({ wavelengthNm, remainder }: LossSpectrum): [number, number] | null {
+function aboveOne({ wavelengthNm, remainder }: LossCurves): [number, number] | null {
   const negative = wavelengthNm.filter((_, k) => remainder[k]! < -ROUNDING)
   return negative.length === 0 ? null : [negative[0]!, negative[negative.length - 1]!]
 }
 
-function assertRange(fromNm: number, toNm: number, irradiance: Curve): void {
+function assertRange(fromNm: number, toNm: number, spectrum: Spectrum): void {
   if (!(toNm > fromNm))
     throw new DomainError('toNm', `The range ends at ${toNm} nm, which is not beyond its start at ${fromNm} nm.`)
-  const first = irradiance.wavelengthNm[0]!
-  const last = irradiance.wavelengthNm[irradiance.wavelengthNm.length - 1]!
+  const [first, last] = rangeNm(spectrum.curve)
   if (!(fromNm >= first && toNm <= last))
     throw new DomainError(
-      'irradiance',
+      'spectrum',
       `The spectrum covers ${first} to ${last} nm and the loss budget needs ${fromNm} to ${toNm} nm.`,
     )
 }

@@ -1,6 +1,7 @@
 import { assertCurve } from '../curve.js'
 import type { Curve } from '../curve.js'
 import { DomainError } from '../errors.js'
+import type { Spectrum } from '../spectrum.js'
 import type { BudgetComponent, ComponentKind, ErrorDistribution, StandardUncertainty } from './budget.js'
 import { assertBudget } from './budgetProblems.js'
 import { currentWeights, uncheckedCurrentWeights, weightedSum } from './currentWeights.js'
@@ -40,6 +41,7 @@ export interface ErrorSource {
 
 /** A component that could not be applied to a junction, and why. It is reported beside the result, never hidden. */
 export interface OmittedComponent {
+  /** 1 = sunward. */
   readonly junction: number
   readonly componentId: string
   readonly reason: string
@@ -61,12 +63,13 @@ export interface DeviceErrors {
  * junctions that share it (`correlatedBetweenJunctions`), and separate errors for the others. Components of size zero
  * vanish; a `column` component of a scan without one is listed in `omitted`.
  *
- * @param junctions from the sunward side, n ≥ 1. @param irradiance W m⁻² nm⁻¹.
+ * @param junctions from the sunward side, n ≥ 1. @param spectrum under which they are compared.
  * @throws DomainError when a curve or a budget is not valid, the point uncertainties have another length than the scan
  * or are negative, a current is not above zero, or junctions that share an error state different distributions for it.
  * Cost O(junctions · (points of EQE + points of spectrum)).
  */
-export function deviceErrors(junctions: readonly MeasuredJunction[], irradiance: Curve): DeviceErrors {
+export function deviceErrors(junctions: readonly MeasuredJunction[], spectrum: Spectrum): DeviceErrors {
+  const irradiance = spectrum.curve
   if (junctions.length === 0) throw new DomainError('junctions', 'junctions is empty; a device has at least one.')
   junctions.forEach(assertJunction)
   const weights = junctions.map(({ eqe }) => currentWeights(eqe.wavelengthNm, irradiance))
@@ -84,7 +87,7 @@ export function deviceErrors(junctions: readonly MeasuredJunction[], irradiance:
     for (const component of junction.components) {
       if (component.uncertainty.unit === 'column' && junction.pointUncertainty === null) {
         const reason = `Junction ${i + 1} has neither repeat scans nor an uncertainty column; "${component.label}" is not counted.`
-        omitted.push({ junction: i, componentId: component.id, reason })
+        omitted.push({ junction: i + 1, componentId: component.id, reason })
         continue
       }
       const effect = effectOf(component, junction, weights[i]!)

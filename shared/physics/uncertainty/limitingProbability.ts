@@ -12,7 +12,7 @@ const FAR = 8.6
 
 /**
  * What may be said of the stack: one junction limits with probability ≥ 0.95, or none does and the currents are
- * matched within their uncertainty. Junctions are numbered from 0 here, from the sunward side.
+ * matched within their uncertainty. Junctions are numbered from 1, the sunward one.
  */
 export type LimitingVerdict =
   | { readonly kind: 'limited'; readonly junction: number; readonly probability: number }
@@ -57,8 +57,8 @@ export function limitingVerdict(probabilities: readonly number[]): LimitingVerdi
   const likeliest = probabilities.indexOf(Math.max(...probabilities))
   const probability = probabilities[likeliest]!
   return probability >= LIMITING_THRESHOLD
-    ? { kind: 'limited', junction: likeliest, probability }
-    : { kind: 'matched-within-uncertainty', likeliest, probability }
+    ? { kind: 'limited', junction: likeliest + 1, probability }
+    : { kind: 'matched-within-uncertainty', likeliest: likeliest + 1, probability }
 }
 
 /** Mean and standard deviation of the smaller of two normal currents, and the probability that it is the first. */

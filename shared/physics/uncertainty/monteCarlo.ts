@@ -47,7 +47,7 @@ export interface MonteCarloResult {
   /** Smallest current of each draw: below the smallest estimate when junctions are nearly matched. */
   readonly limitingCurrent: SampleSummary
   readonly correlation: readonly (readonly number[])[]
-  /** `J_higher/J_lower − 1` of the pair that the estimates name; it may go below zero. Null for a single junction. */
+  /** `J_higher/J_lower − 1` of the pair that the estimates name (1 = sunward); may go below zero. Null for one junction. */
   readonly mismatch: (SampleSummary & { readonly higher: number; readonly lower: number }) | null
   /** `(J_max − J_min)/J_min` of each draw, never below zero. */
   readonly spread: SampleSummary
@@ -260,7 +260,7 @@ function evaluate(errors: DeviceErrors, samples: readonly Float64Array[], seed: 
     limitingCurrent: summarise(least),
     correlation: sampleCorrelation(samples),
     mismatch: pair && {
-      ...summarise(ratioPercent(samples[pair.higher]!, samples[pair.lower]!)),
+      ...summarise(ratioPercent(samples[pair.higher - 1]!, samples[pair.lower - 1]!)),
       higher: pair.higher,
       lower: pair.lower,
     },

@@ -24,16 +24,16 @@ export interface CurrentUncertainty {
 }
 
 /** `(J_higher − J_lower)/J_lower` of two junctions, in percent, with its uncertainty. */
-export interface PairMismatch {
-  /** Index of the junction with the higher estimate; of two equal ones the first. */
+export interface MismatchUncertainty {
+  /** Junction with the higher estimate, 1 = sunward; of two equal ones the sunward one. */
   readonly higher: number
   readonly lower: number
-  readonly percent: number
+  readonly mismatchPercent: number
   readonly uncertaintyPercent: number
   readonly expandedPercent: number
   /**
    * False when the difference is below 2 u: which of the two is higher is then not known, and an interval from
-   * percent ± U would reach below zero; the Monte Carlo interval says what holds.
+   * mismatchPercent ± U would reach below zero; the Monte Carlo interval says what holds.
    */
   readonly orderCertain: boolean
 }
@@ -58,9 +58,9 @@ export interface DeviceUncertainty {
   readonly covariance: readonly (readonly number[])[]
   readonly correlation: readonly (readonly number[])[]
   /** Highest against lowest junction; null for a single junction. */
-  readonly mismatch: PairMismatch | null
+  readonly mismatch: MismatchUncertainty | null
   /** Every pair, in the order 1-2, 1-3, 2-3, … */
-  readonly pairs: readonly PairMismatch[]
+  readonly pairs: readonly MismatchUncertainty[]
   readonly components: readonly ComponentContribution[]
   readonly limitingProbability: readonly number[]
   readonly verdict: LimitingVerdict
@@ -110,10 +110,12 @@ export function propagateDevice(errors: DeviceErrors): DeviceUncertainty {
  * The pair whose mismatch stands for the stack: highest against lowest estimate; of equal ones the one whose mismatch
  * is least certain. Null for a single junction.
  */
-export function widestPair(pairs: readonly PairMismatch[]): PairMismatch | null {
-  return pairs.reduce<PairMismatch | null>((best, pair) => {
-    if (best === null || pair.percent > best.percent) return pair
-    return pair.percent === best.percent && pair.uncertaintyPercent > best.uncertaintyPercent ? pair : best
+export function widestPair(pairs: readonly MismatchUncertainty[]): MismatchUncertainty | null {
+  return pairs.reduce<MismatchUncertainty | null>((best, pair) => {
+    if (best === null || pair.mismatchPercent > best.mismatchPercent) return pair
+    return pair.mismatchPercent === best.mismatchPercent && pair.uncertaintyPercent > best.uncertaintyPercent
+      ? pair
+      : best
   }, null)
 }
 
@@ -121,24 +123,24 @@ export function widestPair(pairs: readonly PairMismatch[]): PairMismatch | null 
 export function pairMismatches(
   currentsMaCm2: readonly number[],
   effects: readonly (readonly number[])[],
-): PairMismatch[] {
+): MismatchUncertainty[] {
   if (currentsMaCm2.some((current) => !(current > 0)))
     throw new DomainError('currentsMaCm2', 'currentsMaCm2 must all be above zero to be compared as a ratio.')
-  const pairs: PairMismatch[] = []
+  const pairs: MismatchUncertainty[] = []
   for (let i = 0; i < currentsMaCm2.length; i++)
     for (let j = i + 1; j < currentsMaCm2.length; j++) {
       const [higher, lower] = currentsMaCm2[j]! > currentsMaCm2[i]! ? [j, i] : [i, j]
-      const percent = (100 * (currentsMaCm2[higher]! - currentsMaCm2[lower]!)) / currentsMaCm2[lower]!
+      const mismatchPercent = (100 * (currentsMaCm2[higher]! - currentsMaCm2[lower]!)) / currentsMaCm2[lower]!
       const uncertaintyPercent = rootSumOfSquares(
         effects.map((effect) => mismatchEffect(currentsMaCm2, effect, higher, lower)),
       )
       pairs.push({
-        higher,
-        lower,
-        percent,
+        higher: higher + 1,
+        lower: lower + 1,
+        mismatchPercent,
         uncertaintyPercent,
         expandedPercent: EXPANSION_K * uncertaintyPercent,
-        orderCertain: percent > EXPANSION_K * uncertaintyPercent,
+        orderCertain: mismatchPercent > EXPANSION_K * uncertaintyPercent,
       })
     }
   return pairs
@@ -188,7 +190,7 @@ function currentUncertainty(
 function componentContributions(
   errors: DeviceErrors,
   effects: readonly (readonly number[])[],
-  mismatch: PairMismatch | null,
+  mismatch: MismatchUncertainty | null,
 ): ComponentContribution[] {
   const totals = errors.currentsMaCm2.map((_, i) => rootSumOfSquares(effects.map((effect) => effect[i]!)))
   const share = (part: number, total: number): number => (total > 0 ? (part / total) ** 2 : 0)
@@ -198,7 +200,7 @@ function componentContributions(
     const uncertaintyMaCm2 = totals.map((_, i) => rootSumOfSquares(own.map((effect) => effect[i]!)))
     const mismatchUncertaintyPercent = mismatch
       ? rootSumOfSquares(
-          own.map((effect) => mismatchEffect(errors.currentsMaCm2, effect, mismatch.higher, mismatch.lower)),
+          own.map((effect) => mismatchEffect(errors.currentsMaCm2, effect, mismatch.higher - 1, mismatch.lower - 1)),
         )
       : 0
     return {

@@ -26,7 +26,7 @@ function simpson(eqe: Curve, sun: Curve): number {
 }
 
 describe('weights of the current', () => {
-  const sun = stripedSun()
+  const sun = stripedSun().curve
 
   it('give the exact integral of the product on the union of the grids', () => {
     const eqe = band(310, 770, 0.88)

@@ -1,9 +1,11 @@
 import { makeCurve } from '../../../shared/physics/curve.js'
 import type { Curve } from '../../../shared/physics/curve.js'
+import { makeSpectrum } from '../../../shared/physics/spectrum.js'
+import type { Spectrum } from '../../../shared/physics/spectrum.js'
 import type { BudgetComponent, MeasuredJunction } from '../../../shared/physics/uncertainty/index.js'
 
 /** A made-up sun: black-body-like irradiance with lines and bands as sharp as the real table's, 0.5 to 5 nm steps. */
-export function stripedSun(): Curve {
+export function stripedSun(): Spectrum {
   const nm: number[] = []
   for (let x = 280; x < 400; x += 0.5) nm.push(x)
   for (let x = 400; x < 1700; x += 1) nm.push(x)
@@ -13,7 +15,7 @@ export function stripedSun(): Curve {
     const bands = 1 - 0.7 * Math.exp(-(((x - 940) / 18) ** 2)) - 0.5 * Math.exp(-(((x - 761) / 2) ** 2))
     return 1.6 * rising * Math.exp(-(x - 280) / 800) * bands * (1 + 0.06 * Math.sin(2.1 * x) * Math.sin(0.37 * x))
   })
-  return makeCurve(nm, values)
+  return makeSpectrum({ id: 'striped', name: 'Striped sun', curve: makeCurve(nm, values) })
 }
 
 /** A smooth response between two edges, each with a width, from 300 nm on. */

@@ -164,14 +164,14 @@ describe('probability that each junction limits', () => {
 
 describe('verdict', () => {
   it('names the limiting junction from 0.95 on', () => {
-    expect(limitingVerdict([0.03, 0.97])).toEqual({ kind: 'limited', junction: 1, probability: 0.97 })
+    expect(limitingVerdict([0.03, 0.97])).toEqual({ kind: 'limited', junction: 2, probability: 0.97 })
     expect(limitingVerdict([0.95, 0.05]).kind).toBe('limited')
   })
 
   it('is matched within uncertainty below', () => {
     expect(limitingVerdict([0.94, 0.06])).toEqual({
       kind: 'matched-within-uncertainty',
-      likeliest: 0,
+      likeliest: 1,
       probability: 0.94,
     })
   })

@@ -2,6 +2,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { makeCurve } from '../../../shared/physics/curve.js'
 import { DomainError } from '../../../shared/physics/errors.js'
+import { makeSpectrum } from '../../../shared/physics/spectrum.js'
 import { deviceErrors, normalProbabilityBelow, propagateDevice } from '../../../shared/physics/uncertainty/index.js'
 import type { BudgetComponent, DeviceUncertainty, MeasuredJunction } from '../../../shared/physics/uncertainty/index.js'
 import { shiftedCurrent } from '../../../shared/physics/uncertainty/errorSources.js'
@@ -70,8 +71,8 @@ describe('a common error', () => {
       { ...top, components: [detector('A')] },
       { ...bottom, components: [detector('B')] },
     ])
-    const { percent, uncertaintyPercent } = result.mismatch!
-    expect(uncertaintyPercent).toBeCloseTo((1 + percent / 100) * Math.SQRT2, 10)
+    const { mismatchPercent, uncertaintyPercent } = result.mismatch!
+    expect(uncertaintyPercent).toBeCloseTo((1 + mismatchPercent / 100) * Math.SQRT2, 10)
     expect(result.correlation[0]![1]).toBe(0)
   })
 })
@@ -115,9 +116,9 @@ describe('three junctions', () => {
 
   it('have a mismatch of the highest against the lowest and a table of three pairs', () => {
     const j = result.currents.map((current) => current.currentMaCm2)
-    expect(result.mismatch!.percent).toBeCloseTo(100 * (Math.max(...j) / Math.min(...j) - 1), 10)
-    expect(result.mismatch!.higher).toBe(j.indexOf(Math.max(...j)))
-    expect(result.mismatch!.lower).toBe(j.indexOf(Math.min(...j)))
+    expect(result.mismatch!.mismatchPercent).toBeCloseTo(100 * (Math.max(...j) / Math.min(...j) - 1), 10)
+    expect(result.mismatch!.higher).toBe(j.indexOf(Math.max(...j)) + 1)
+    expect(result.mismatch!.lower).toBe(j.indexOf(Math.min(...j)) + 1)
     expect(result.pairs).toHaveLength(3)
   })
 
@@ -141,7 +142,7 @@ describe('special devices', () => {
     const same = measured(band(310, 770, 0.88), [component({ id: 'gain', correlatedBetweenJunctions: false })])
     const result = propagate([same, same])
     expect(result.limitingProbability).toEqual([0.5, 0.5])
-    expect(result.mismatch).toMatchObject({ percent: 0, orderCertain: false })
+    expect(result.mismatch).toMatchObject({ mismatchPercent: 0, orderCertain: false })
     expect(result.mismatch!.uncertaintyPercent).toBeCloseTo(Math.SQRT2, 10)
     expect(result.verdict.kind).toBe('matched-within-uncertainty')
   })
@@ -158,7 +159,7 @@ describe('special devices', () => {
     const result = propagate([top, { ...bottom, pointUncertainty: null }])
     expect(result.omitted).toEqual([
       {
-        junction: 1,
+        junction: 2,
         componentId: 'noise',
         reason: 'Junction 2 has neither repeat scans nor an uncertainty column; "noise" is not counted.',
       },
@@ -209,7 +210,11 @@ describe('laws', () => {
           component({ id: 'gain', uncertainty: { unit: 'percent', value: percent } }),
           pointwise(1),
         ])
-        const bright = { ...sun, values: sun.values.map((e) => e * scale) }
+        const bright = makeSpectrum({
+          id: 'bright',
+          name: 'Bright',
+          curve: { ...sun.curve, values: sun.curve.values.map((e) => e * scale) },
+        })
         const a = propagateDevice(deviceErrors(junctions, sun)).currents[0]!
         const b = propagateDevice(deviceErrors(junctions, bright)).currents[0]!
         expect(b.uncertaintyMaCm2 / b.currentMaCm2).toBeCloseTo(a.uncertaintyMaCm2 / a.currentMaCm2, 12)
