@@ -1,6 +1,7 @@
 import type { Curve } from '../curve.js'
 import type { JunctionDiode } from '../diode/junction.js'
 import type { BiasSource } from '../measurement/biasLight.js'
+import type { Spectrum } from '../spectrum.js'
 import type { CheckOutcome, Finding, FindingNumber, Severity } from './finding.js'
 
 /** How a scan was taken, as far as it was recorded; null or left out means not recorded. */
@@ -55,8 +56,8 @@ export interface ScanInContext {
   readonly reflectance?: Curve | null
   /** J_sc of the illuminated J–V of the device under `spectrum`, mA cm⁻². */
   readonly shortCircuitCurrentMaCm2?: number | null
-  /** The spectrum that currents are counted under, W m⁻² nm⁻¹. */
-  readonly spectrum?: Curve | null
+  /** The spectrum that currents are counted under. */
+  readonly spectrum?: Spectrum | null
 }
 
 export interface Threshold {

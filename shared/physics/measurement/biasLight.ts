@@ -1,7 +1,7 @@
-import { PHOTON_ENERGY_NM_EV } from '../constants.js'
+import { shortCircuitCurrentDensity } from '../currents.js'
 import { assertCurve, makeCurve, type Curve } from '../curve.js'
 import { assertNotNegative, assertPositive, DomainError } from '../errors.js'
-import { productIntegral } from './productIntegral.js'
+import { makeSpectrum } from '../spectrum.js'
 
 /** One bias lamp at the sample plane: a band by centre and width, or an own spectrum. */
 export type BiasSource = BandSource | SpectrumSource
@@ -66,25 +66,20 @@ export function totalIrradiance(sources: readonly BiasSource[]): number {
 }
 
 /**
- * Photocurrent density that a spectrum drives in a junction, `J = q ∫ EQE φ dλ`, mA cm⁻²: EQE and E λ linear between
- * their points, the product integrated exactly, EQE zero outside its scan.
+ * Photocurrent density of each junction under the bias light, `J = q ∫ EQE φ dλ`, mA cm⁻²; never below zero, whatever
+ * the noise of a scan. Errors as `sourceSpectrum`.
  */
-export function photocurrent(eqe: Curve, spectrum: Curve): number {
-  const weighted = {
-    wavelengthNm: spectrum.wavelengthNm,
-    values: spectrum.values.map((e, i) => e * spectrum.wavelengthNm[i]!),
-  }
-  // E λ/(hc/q) is in A m⁻² nm⁻¹; 10 A m⁻² = 1 mA cm⁻².
-  return productIntegral(eqe, weighted) / PHOTON_ENERGY_NM_EV / 10
-}
-
-/** Photocurrent density of each junction under the bias light, mA cm⁻²; errors as `sourceSpectrum`. */
 export function biasPhotocurrents(eqes: readonly Curve[], sources: readonly BiasSource[]): number[] {
-  const spectra = sources.map(sourceSpectrum)
+  const spectra = sources.flatMap((source) => {
+    const curve = sourceSpectrum(source)
+    return curve.values.some((e) => e !== 0)
+      ? [makeSpectrum({ id: 'bias', name: source.name ?? 'bias light', curve })]
+      : []
+  })
   return eqes.map((eqe) =>
     Math.max(
       0,
-      spectra.reduce((sum, spectrum) => sum + photocurrent(eqe, spectrum), 0),
+      spectra.reduce((sum, spectrum) => sum + shortCircuitCurrentDensity(eqe, spectrum), 0),
     ),
   )
 }

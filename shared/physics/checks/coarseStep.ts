@@ -1,0 +1,49 @@
+import type { Curve } from '../curve.js'
+import { shortCircuitCurrentDensity } from '../currents.js'
+import { fired, notChecked, PASSED, type Check } from './check.js'
+import { percent } from './wording.js'
+
+/** If every second point can be dropped without moving the current, the steps are fine enough. */
+export const coarseStep: Check = {
+  name: 'coarse-step',
+  title: 'Coarse step',
+  inputs: ['spectrum'],
+  defaultThresholds: {
+    largestChange: { value: 0.003, unit: '', meaning: 'Relative change of Jsc when every second point is dropped' },
+  },
+  advice: 'Repeat with steps of 5 nm (common practice), and 1–5 nm across the absorption edge.',
+  run(context, thresholds) {
+    if (!context.spectrum) return notChecked('no spectrum')
+    if (context.scan.values.length < 5) return notChecked('the scan has fewer than five points')
+    const full = shortCircuitCurrentDensity(context.scan, context.spectrum)
+    if (!(full > 0)) return notChecked('the scan has no response to count a current from')
+    const change = shortCircuitCurrentDensity(everySecond(context.scan), context.spectrum) / full - 1
+    if (Math.abs(change) <= thresholds.largestChange!) return PASSED
+    const step = steepestStep(context.scan)
+    return fired(this, {
+      severity: 'caution',
+      message:
+        `Jsc moves by ${percent(change, 2)} when every second point is dropped; the steepest step is ` +
+        `${(step[1] - step[0]).toFixed(1)} nm. The integral depends on the step.`,
+      numbers: {
+        change: { value: change, unit: '' },
+        steepestStep: { value: step[1] - step[0], unit: 'nm' },
+      },
+      bandsNm: [step],
+    })
+  },
+}
+
+function everySecond(curve: Curve): Curve {
+  const last = curve.values.length - 1
+  const isKept = (_: number, i: number): boolean => i % 2 === 0 || i === last
+  return { wavelengthNm: curve.wavelengthNm.filter(isKept), values: curve.values.filter(isKept) }
+}
+
+/** The interval with the largest fall or rise of EQE: where finer steps help most. */
+function steepestStep({ wavelengthNm, values }: Curve): [number, number] {
+  let best = 1
+  for (let i = 1; i < values.length; i++)
+    if (Math.abs(values[i]! - values[i - 1]!) > Math.abs(values[best]! - values[best - 1]!)) best = i
+  return [wavelengthNm[best - 1]!, wavelengthNm[best]!]
+}
