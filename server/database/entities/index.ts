@@ -1,0 +1,34 @@
+import { AuditEvent } from './AuditEvent.js'
+import { Device } from './Device.js'
+import { Invitation } from './Invitation.js'
+import { Junction } from './Junction.js'
+import { Layer } from './Layer.js'
+import { Membership } from './Membership.js'
+import { OutboxMail } from './OutboxMail.js'
+import { PasswordReset } from './PasswordReset.js'
+import { Project } from './Project.js'
+import { ReadingMemory } from './ReadingMemory.js'
+import { Scan } from './Scan.js'
+import { SessionRecord } from './SessionRecord.js'
+import { SourceFile } from './SourceFile.js'
+import { Spectrum } from './Spectrum.js'
+import { User } from './User.js'
+
+/** Every entity. A new one is one file and one line here, and a migration. */
+export const ENTITIES = [
+  User,
+  SessionRecord,
+  PasswordReset,
+  Project,
+  Membership,
+  Invitation,
+  OutboxMail,
+  AuditEvent,
+  Device,
+  Junction,
+  Layer,
+  SourceFile,
+  ReadingMemory,
+  Scan,
+  Spectrum,
+]

@@ -1,0 +1,23 @@
+import type { ErrorCode } from '../../shared/contract/errors.js'
+
+/** The one place where a meaning becomes an HTTP status. */
+export const ERROR_STATUS: Record<ErrorCode, number> = {
+  INPUT_INVALID: 400,
+  BODY_MALFORMED: 400,
+  BODY_TOO_LARGE: 413,
+  SIGN_IN_NEEDED: 401,
+  SIGN_IN_FAILED: 401,
+  PASSWORD_WRONG: 403,
+  CSRF_TOKEN_WRONG: 403,
+  RIGHT_MISSING: 403,
+  NOT_FOUND: 404,
+  ROUTE_NOT_FOUND: 404,
+  STALE_VERSION: 409,
+  ALREADY_EXISTS: 409,
+  STATE_CONFLICT: 409,
+  LINK_EXPIRED: 410,
+  FILE_UNREADABLE: 422,
+  TOO_MANY_REQUESTS: 429,
+  DATABASE_UNAVAILABLE: 503,
+  INTERNAL: 500,
+}

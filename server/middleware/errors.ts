@@ -1,0 +1,82 @@
+import type { ErrorRequestHandler, RequestHandler } from 'express'
+import multer from 'multer'
+import { randomUUID } from 'node:crypto'
+import type { Logger } from 'pino'
+import { ApiError, ERROR_TITLES, isApiError, type Problem } from '../../shared/contract/errors.js'
+import { isDatabaseUnavailable, isDuplicateKey } from '../database/databaseErrors.js'
+import { ERROR_STATUS } from './errorStatus.js'
+
+/** An API address that no route serves. */
+export const unknownRoute: RequestHandler = (request) => {
+  throw new ApiError(
+    'ROUTE_NOT_FOUND',
+    { path: request.path },
+    `The API has no address ${request.method} ${request.path}.`,
+  )
+}
+
+/** Every error leaves here, as an RFC 9457 problem document; what was not foreseen keeps its details in the log. */
+export function problems(log: Logger): ErrorRequestHandler {
+  return (error: unknown, request, response, next) => {
+    if (response.headersSent) return next(error)
+    const known = translate(error)
+    if (known) return void send(known)
+    const id = randomUUID()
+    log.error({ id, err: error, method: request.method, path: request.path }, 'unexpected error')
+    send(
+      new ApiError(
+        'INTERNAL',
+        { id },
+        `Something went wrong on the server. Give this number to the administrator: ${id}`,
+      ),
+    )
+
+    function send(problem: ApiError): void {
+      const document: Problem = {
+        type: `urn:tierlight:problem:${problem.code.toLowerCase().replaceAll('_', '-')}`,
+        title: ERROR_TITLES[problem.code],
+        status: ERROR_STATUS[problem.code],
+        detail: problem.message,
+        code: problem.code,
+        details: problem.details as Record<string, unknown>,
+        ...(isApiError(problem, 'INPUT_INVALID') ? { errors: problem.details.errors } : {}),
+      }
+      if (isApiError(problem, 'TOO_MANY_REQUESTS'))
+        response.setHeader('Retry-After', String(problem.details.retryAfterSeconds))
+      response.status(document.status).type('application/problem+json').send(JSON.stringify(document))
+    }
+  }
+}
+
+interface HttpError {
+  type?: string
+  status?: number
+  limit?: number
+}
+
+function translate(error: unknown): ApiError | null {
+  if (isApiError(error)) return error
+  if (isDatabaseUnavailable(error))
+    return new ApiError('DATABASE_UNAVAILABLE', {}, 'The database does not answer. Try again in a moment.', {
+      cause: error,
+    })
+  if (isDuplicateKey(error))
+    return new ApiError('ALREADY_EXISTS', { what: 'entry', field: '', value: '' }, 'Such an entry exists already.')
+  if (error instanceof multer.MulterError) return multerProblem(error)
+  const { type, status, limit } = (error ?? {}) as HttpError
+  if (type === 'entity.too.large')
+    return new ApiError('BODY_TOO_LARGE', { limitBytes: limit ?? 0 }, `The request is larger than ${limit ?? 0} bytes.`)
+  if (type === 'entity.parse.failed' || status === 400)
+    return new ApiError('BODY_MALFORMED', {}, 'The body of the request is not valid JSON.')
+  return null
+}
+
+function multerProblem(error: multer.MulterError): ApiError {
+  if (error.code === 'LIMIT_FILE_SIZE')
+    return new ApiError('BODY_TOO_LARGE', { limitBytes: 0 }, 'A file is larger than this installation takes.')
+  const message =
+    error.code === 'LIMIT_FILE_COUNT' || error.code === 'LIMIT_UNEXPECTED_FILE'
+      ? 'Send the files in parts named “files”, and not more at once than this installation takes.'
+      : `The upload cannot be used: ${error.message}.`
+  return new ApiError('INPUT_INVALID', { errors: [{ path: ['files'], message }] }, message)
+}

@@ -1,0 +1,50 @@
+import session from 'express-session'
+import type { Database } from '../database/transaction.js'
+import { deleteSession, readSession, saveSession, touchSession } from '../database/repositories/sessions.js'
+
+/** Sessions live in MariaDB, so that any server answers for any browser. */
+export class DatabaseSessionStore extends session.Store {
+  constructor(private readonly database: Database) {
+    super()
+  }
+
+  override get(id: string, done: (error: unknown, data?: session.SessionData | null) => void): void {
+    readSession(this.database.work, id, new Date()).then(
+      (data) => done(null, data ? (JSON.parse(data) as session.SessionData) : null),
+      done,
+    )
+  }
+
+  override set(id: string, data: session.SessionData, done: (error?: unknown) => void = () => undefined): void {
+    saveSession(this.database.work, {
+      id,
+      userId: data.passport?.user ?? null,
+      data: JSON.stringify(data),
+      client: (data.client ?? '').slice(0, 200),
+      at: new Date(),
+      expiresAt: expiryOf(data),
+    }).then(() => done(), done)
+  }
+
+  override touch(id: string, data: session.SessionData, done: (error?: unknown) => void = () => undefined): void {
+    touchSession(this.database.work, id, new Date(), expiryOf(data)).then(() => done(), done)
+  }
+
+  override destroy(id: string, done: (error?: unknown) => void = () => undefined): void {
+    deleteSession(this.database.work, id).then(() => done(), done)
+  }
+}
+
+function expiryOf(data: session.SessionData): Date {
+  return data.cookie.expires
+    ? new Date(data.cookie.expires)
+    : new Date(Date.now() + (data.cookie.originalMaxAge ?? 86_400_000))
+}
+
+declare module 'express-session' {
+  interface SessionData {
+    csrfToken?: string
+    client?: string
+    passport?: { user?: string }
+  }
+}
