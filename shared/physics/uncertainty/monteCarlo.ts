@@ -201,11 +201,26 @@ class ErrorStream {
     const { points } = this
     for (let d = 0; d < size; d++) {
       this.fill(points, points.length)
-      let sum = 0
-      for (let k = 0; k < points.length; k++) sum += pointsMaCm2[k]! * points[k]!
-      added[d]! += sum
+      added[d]! += scalarProduct(pointsMaCm2, points)
     }
   }
+}
+
+/** `Σ a_k b_k` in four interleaved sums, so that one addition need not wait for the one before it. */
+function scalarProduct(a: Float64Array, b: Float64Array): number {
+  let first = 0
+  let second = 0
+  let third = 0
+  let fourth = 0
+  let k = 0
+  for (; k + 3 < a.length; k += 4) {
+    first += a[k]! * b[k]!
+    second += a[k + 1]! * b[k + 1]!
+    third += a[k + 2]! * b[k + 2]!
+    fourth += a[k + 3]! * b[k + 3]!
+  }
+  for (; k < a.length; k++) first += a[k]! * b[k]!
+  return first + second + (third + fourth)
 }
 
 function addScaled(out: Float64Array, z: Float64Array, scale: number, size: number): void {
