@@ -1,6 +1,6 @@
 import { assertNotNegative, DomainError } from '../errors.js'
 import { normalIndex } from './fresnel.js'
-import { solveGroup, type GroupWork } from './coherentGroup.js'
+import { CoherentGroup, type MediaTable } from './coherentGroup.js'
 import { assertIndex, assertStack, at, type Dispersion, type OpticalStack, type StackOptics } from './stack.js'
 
 /** e^{2iδ} of a layer and its modulus e^{−2 Im δ} on the stack's wavelengths. */
@@ -8,6 +8,12 @@ interface Phase {
   readonly re: Float64Array
   readonly im: Float64Array
   readonly modulus: Float64Array
+}
+
+/** A coherent group as seen from its front, and from the thick layer behind it where there is one. */
+interface CoupledGroup {
+  readonly front: CoherentGroup
+  readonly rear: CoherentGroup | null
 }
 
 /** Thicknesses whose phases are kept for each layer: the columns of a map come back again and again. */
@@ -38,15 +44,11 @@ export class StackSolver {
   private readonly thicknessNm: number[]
   private readonly phases: Phase[]
   private readonly kept: Map<number, Phase>[]
-  private readonly work: Record<'s' | 'p', GroupWork>
+  private readonly work: Record<'s' | 'p', MediaTable>
   private readonly qRe: Float64Array[]
   private readonly qIm: Float64Array[]
   private readonly result: { reflectance: Float64Array; transmittance: Float64Array; absorptance: Float64Array[] }
-  private readonly scratch: Float64Array
-  /** R, T and absorptances of each group for light from its front and from its rear. */
-  private readonly front: readonly Float64Array[]
-  private readonly rear: readonly Float64Array[]
-  private readonly reversed: readonly (readonly number[])[]
+  private readonly coupled: Readonly<Record<'s' | 'p', readonly CoupledGroup[]>>
   private readonly returned: Float64Array
 
   /** @throws DomainError naming the member of the stack that is out of its domain. */
@@ -76,10 +78,13 @@ export class StackSolver {
       transmittance: new Float64Array(points),
       absorptance: layers.map(() => new Float64Array(points)),
     }
-    this.scratch = new Float64Array(4 * this.media)
-    this.front = this.groups.map((group) => new Float64Array(group.length))
-    this.rear = this.groups.map((group) => new Float64Array(group.length))
-    this.reversed = this.groups.map((group) => group.slice().reverse())
+    const couple = (media: MediaTable): CoupledGroup[] =>
+      this.groups.map((order, g) => ({
+        front: new CoherentGroup(media, order, false, points),
+        // Light comes from behind only where a thick layer is.
+        rear: g + 1 < this.groups.length ? new CoherentGroup(media, order.slice().reverse(), true, points) : null,
+      }))
+    this.coupled = { s: couple(this.work.s), p: couple(this.work.p) }
     this.returned = new Float64Array(this.groups.length)
     for (let m = 0; m < this.media; m++) this.refreshIndex(m)
     for (let m = 0; m + 1 < this.media; m++) this.refreshInterface(m)
@@ -93,6 +98,7 @@ export class StackSolver {
     if (this.thicknessNm[layer + 1] === thicknessNm) return
     this.thicknessNm[layer + 1] = thicknessNm
     this.refreshPhase(layer + 1)
+    this.markChanged(layer + 1, false)
   }
 
   /** Sets n and k of a layer; layers count from 0. @throws DomainError naming the value. */
@@ -107,6 +113,7 @@ export class StackSolver {
     this.refreshInterface(m - 1)
     this.refreshInterface(m)
     this.refreshPhase(m)
+    this.markChanged(m, true)
   }
 
   /**
@@ -114,68 +121,77 @@ export class StackSolver {
    * next call; copy what must last. Cost O(layers × wavelengths × polarisations).
    */
   solve(): StackOptics {
+    if (this.polarisations.length === 1 && this.groups.length === 1) {
+      const { front } = this.coupled[this.polarisations[0]!][0]!
+      front.solve()
+      return front.optics
+    }
     const { reflectance, transmittance, absorptance } = this.result
     reflectance.fill(0)
     transmittance.fill(0)
     for (const spectrum of absorptance) spectrum.fill(0)
     const share = 1 / this.polarisations.length
     for (const polarisation of this.polarisations) {
-      const work = this.work[polarisation]
-      if (this.groups.length === 1) this.addCoherent(work, share)
-      else this.addIncoherent(work, share)
+      const groups = this.coupled[polarisation]
+      for (const { front, rear } of groups) {
+        front.solve()
+        rear?.solve()
+      }
+      if (groups.length === 1) this.addCoherent(groups[0]!.front, share)
+      else this.addIncoherent(groups, share)
     }
     return this.result
   }
 
-  private addCoherent(work: GroupWork, share: number): void {
+  private addCoherent(group: CoherentGroup, share: number): void {
     const { reflectance, transmittance, absorptance } = this.result
-    const order = this.groups[0]!
-    const layers = order.length - 2
-    const out = this.front[0]!
-    for (let i = 0; i < this.points; i++) {
-      solveGroup(work, order, false, i, this.scratch, out)
-      reflectance[i]! += share * out[0]!
-      transmittance[i]! += share * out[1]!
-      for (let l = 0; l < layers; l++) absorptance[l]![i]! += share * out[l + 2]!
-    }
+    add(reflectance, group.reflectance, share)
+    add(transmittance, group.transmittance, share)
+    group.absorptance.forEach((spectrum, l) => add(absorptance[l]!, spectrum, share))
   }
 
   /** Intensities in the thick layers: rear to front for what returns, then front to rear for what arrives. */
-  private addIncoherent(work: GroupWork, share: number): void {
+  private addIncoherent(groups: readonly CoupledGroup[], share: number): void {
     const { reflectance, transmittance, absorptance } = this.result
-    const { groups, front, rear, reversed, returned } = this
+    const { returned } = this
     const last = groups.length - 1
     for (let i = 0; i < this.points; i++) {
       for (let g = last; g >= 0; g--) {
-        solveGroup(work, groups[g]!, false, i, this.scratch, front[g]!)
-        returned[g] = front[g]![0]!
-        if (g === last) continue
-        solveGroup(work, reversed[g]!, true, i, this.scratch, rear[g]!)
-        const pass = this.passOf(groups[g]!.at(-1)!, i)
+        const { front, rear } = groups[g]!
+        returned[g] = front.reflectance[i]!
+        if (!rear) continue
+        const pass = this.passOf(front.order.at(-1)!, i)
         const back = pass * pass * returned[g + 1]!
-        returned[g]! += (front[g]![1]! * back * rear[g]![1]!) / (1 - rear[g]![0]! * back)
+        returned[g]! += (front.transmittance[i]! * back * rear.transmittance[i]!) / (1 - rear.reflectance[i]! * back)
       }
       reflectance[i]! += share * returned[0]!
       let arriving = share
       for (let g = 0; g <= last; g++) {
-        const order = groups[g]!
-        const layers = order.length - 2
-        const thick = order[order.length - 1]!
-        const pass = g < last ? this.passOf(thick, i) : 0
-        const back = g < last ? pass * pass * returned[g + 1]! : 0
-        const down = (arriving * front[g]![1]!) / (g < last ? 1 - rear[g]![0]! * back : 1)
-        const up = down * back
+        const { front, rear } = groups[g]!
+        const layers = front.order.length - 2
+        const thick = front.order[layers + 1]!
+        const pass = rear ? this.passOf(thick, i) : 0
+        const back = rear ? pass * pass * returned[g + 1]! : 0
+        const down = (arriving * front.transmittance[i]!) / (rear ? 1 - rear.reflectance[i]! * back : 1)
         for (let l = 0; l < layers; l++) {
-          const fromBelow = g < last ? up * rear[g]![layers + 1 - l]! : 0
-          absorptance[order[l + 1]! - 1]![i]! += arriving * front[g]![l + 2]! + fromBelow
+          const fromBelow = rear ? down * back * rear.absorptance[layers - 1 - l]![i]! : 0
+          absorptance[front.order[l + 1]! - 1]![i]! += arriving * front.absorptance[l]![i]! + fromBelow
         }
-        if (g === last) transmittance[i]! += down
+        if (!rear) transmittance[i]! += down
         else {
           absorptance[thick - 1]![i]! += down * (1 - pass) * (1 + pass * returned[g + 1]!)
           arriving = down * pass
         }
       }
     }
+  }
+
+  private markChanged(medium: number, isIndex: boolean): void {
+    for (const polarisation of this.polarisations)
+      for (const { front, rear } of this.coupled[polarisation]) {
+        front.markChanged(medium, isIndex)
+        rear?.markChanged(medium, isIndex)
+      }
   }
 
   /** Share of the intensity that crosses a layer once. */
@@ -253,7 +269,7 @@ export class StackSolver {
     return Array.from({ length: this.media }, () => new Float64Array(this.points))
   }
 
-  private makeWork(): GroupWork {
+  private makeWork(): MediaTable {
     const empty = this.phases.map((phase) => phase)
     return {
       etaRe: this.perMedium(),
@@ -297,6 +313,10 @@ function groupsBetweenThick(coherent: readonly boolean[]): number[][] {
 
 function makePhase(points: number): Phase {
   return { re: new Float64Array(points), im: new Float64Array(points), modulus: new Float64Array(points) }
+}
+
+function add(to: Float64Array, values: Float64Array, share: number): void {
+  for (let i = 0; i < to.length; i++) to[i]! += share * values[i]!
 }
 
 function isAbsorbing(k: Dispersion): boolean {

@@ -1,30 +1,51 @@
+import { dot, lowRankOf } from '../numerics/lowRank.js'
 import type { CompiledDevice } from './compiledDevice.js'
 import type { Change } from './device.js'
 import type { ResolvedAxis } from './mapAxis.js'
 import { measuredState, setIn, type DeviceState } from './parameters.js'
-import type { Segment, SegmentBase } from './segment.js'
 
-/** Factors of A'/A and of A' over the values of one axis, row by row: value × points + point. */
+/** Factors of A'/A and of A' over the values of one group of changes: value × stride + point. */
 interface Factors {
+  /** 0 when the axis does not touch this junction's light: one row of ones serves every value. */
+  readonly stride: number
   readonly ratio: Float64Array
   readonly absorptance: Float64Array
-  /** False where the segment does not count at that value (beyond the scan, gap not lowered). */
+  /** Whether the segment's own junction belongs to this group. */
+  readonly holdsOwn: boolean
+  /** With `holdsOwn`: 1 for each value at which a segment beyond its scan counts. */
   readonly counts: Uint8Array
 }
 
+/** Wavelengths where EQE/A may have to be continued, packed for the two axes. */
+interface WeakPoints {
+  readonly count: number
+  readonly measured: Float64Array
+  readonly collection: Float64Array
+  readonly before: Float64Array
+  readonly ratioX: Float64Array
+  readonly ratioY: Float64Array
+  readonly absorptanceX: Float64Array
+  readonly absorptanceY: Float64Array
+}
+
+/** Error of a low-rank current, as a share of the longest row: a few roundings. */
+const ROUNDING = 4e-16
+
 /**
  * One segment of a map whose two axes belong to different junctions. At ordinary wavelengths the current is
- * `Σ (w EQE f_x) f_y`; the few where EQE/A may have to be continued are added point by point.
+ * `Σ (w EQE f_x) f_y`. The rows of f_x are values of a smooth function and nearly dependent, so that the sum over
+ * wavelengths is done once for a few directions of them, to within rounding, and a point costs a dot product of that few;
+ * where they are not, the sum over wavelengths is done at every point. The wavelengths where EQE/A may have to be
+ * continued are added point by point.
  */
 export class SeparableSegment {
   readonly junction: number
-  private readonly ordinary: number
-  /** w EQE f of the x axis, over ordinary wavelengths. */
+  private readonly length: number
   private readonly left: Float64Array
-  /** f of the y axis, over ordinary wavelengths. */
   private readonly right: Float64Array
-  private readonly weak: Int32Array
+  private readonly weak: WeakPoints
 
+  /** Null for what lies beyond a scan when no point of the map lowers that junction's gap. */
   static make(
     compiled: CompiledDevice,
     s: number,
@@ -33,128 +54,152 @@ export class SeparableSegment {
     y: ResolvedAxis,
   ): SeparableSegment | null {
     const segment = compiled.segments[s]!
-    const made = new SeparableSegment(compiled, s, change, x, y)
-    const counts = [made.x, made.y, made.fixed].some((factors) => factors.counts.includes(1))
-    return segment.isBeyond && !counts ? null : made
+    if (segment.isBeyond) {
+      // Axes rise, so the first values have the lowest gaps.
+      const lowest = compiled.state(change)
+      for (const { parameter, values, key } of [x, y]) setIn(compiled.device, lowest, parameter, values[0]!, key)
+      if (!compiled.counts(segment, lowest)) return null
+    }
+    return new SeparableSegment(compiled, s, change, x, y)
   }
 
-  private readonly segment: Segment
-  private readonly base: SegmentBase
-  private readonly x: Factors
-  private readonly y: Factors
-  private readonly fixed: Factors
-
   private constructor(compiled: CompiledDevice, s: number, change: Change, x: ResolvedAxis, y: ResolvedAxis) {
-    const segment = compiled.segments[s]!
-    this.segment = segment
-    this.base = compiled.bases[s]!
-    this.junction = segment.junction
-    const [px, py] = [x, y].map((axis) => ('junction' in axis.parameter ? axis.parameter.junction : -1))
-    this.x = factorsOf(compiled, s, change, px!, x)
-    this.y = factorsOf(compiled, s, change, py!, y)
-    this.fixed = factorsOf(compiled, s, change, -1, undefined, [px!, py!])
-    const points = segment.wavelengthNm.length
+    const { junction, weights, eqe, isBeyond, wavelengthNm } = compiled.segments[s]!
+    const base = compiled.bases[s]!
+    this.junction = junction
+    const fx = axisFactors(compiled, s, change, x)
+    const fy = axisFactors(compiled, s, change, y)
+    const fixed = fixedFactors(compiled, s, change, [ownerOf(x), ownerOf(y)])
     const ordinary: number[] = []
     const weak: number[] = []
-    for (let k = 0; k < points; k++) (this.base.isWeak[k] ? weak : ordinary).push(k)
-    this.ordinary = ordinary.length
-    this.weak = Int32Array.from(weak)
-    const { ratio: fx } = this.x
-    const { ratio: fy } = this.y
-    this.left = new Float64Array(x.values.length * ordinary.length)
-    this.right = new Float64Array(y.values.length * ordinary.length)
-    ordinary.forEach((k, n) => {
-      const measured = segment.weights[k]! * (segment.eqe[k]! * this.fixed.ratio[k]!)
-      for (let i = 0; i < x.values.length; i++) this.left[i * ordinary.length + n] = measured * fx[i * points + k]!
-      for (let j = 0; j < y.values.length; j++) this.right[j * ordinary.length + n] = fy[j * points + k]!
-    })
+    for (let k = 0; k < wavelengthNm.length; k++) (base.isWeak[k] ? weak : ordinary).push(k)
+    const [width, height] = [x.values.length, y.values.length]
+
+    const left = gather(fx.ratio, fx.stride, width, isBeyond ? [] : ordinary)
+    const right = gather(fy.ratio, fy.stride, height, isBeyond ? [] : ordinary)
+    const points = isBeyond ? 0 : ordinary.length
+    for (let i = 0; i < width; i++)
+      for (let n = 0; n < points; n++) {
+        const k = ordinary[n]!
+        left[i * points + n]! *= weights[k]! * (eqe[k]! * fixed.ratio[k]!)
+      }
+    const low = points > 0 ? lowRankOf(left, width, points, ROUNDING, points >> 3) : null
+    this.length = low ? low.rank : points
+    this.left = low ? low.coefficients : left
+    this.right = low ? project(right, height, points, low.basis, low.rank) : right
+
+    const count = weak.length
+    // Beyond its scan a segment counts only at some values: there A' stands at nothing, which is never a gain.
+    const absorptanceX = gather(fx.absorptance, fx.stride, width, weak)
+    const absorptanceY = gather(fy.absorptance, fy.stride, height, weak)
+    if (isBeyond && fx.holdsOwn) silence(absorptanceX, fx.counts, count)
+    if (isBeyond && fy.holdsOwn) silence(absorptanceY, fy.counts, count)
+    const ratioX = gather(fx.ratio, fx.stride, width, weak)
+    for (let i = 0; i < width; i++)
+      for (let w = 0; w < count; w++) {
+        const k = weak[w]!
+        ratioX[i * count + w]! *= weights[k]! * (eqe[k]! * fixed.ratio[k]!)
+        absorptanceX[i * count + w]! *= fixed.absorptance[k]!
+      }
+    this.weak = {
+      count,
+      measured: Float64Array.from(weak, (k) => weights[k]! * eqe[k]!),
+      collection: Float64Array.from(weak, (k) => weights[k]! * base.collection[k]!),
+      before: Float64Array.from(weak, (k) => base.absorptance[k]!),
+      ratioX,
+      ratioY: gather(fy.ratio, fy.stride, height, weak),
+      absorptanceX,
+      absorptanceY,
+    }
   }
 
   /** Adds this segment's current to some columns of a row. */
   addRow(row: number, columns: Int32Array, count: number, out: Float64Array, start: number): void {
-    const { left, right, ordinary } = this
-    const r = row * ordinary
-    let c = 0
-    if (!this.segment.isBeyond) {
-      for (; c + 3 < count; c += 4) {
-        const [c0, c1, c2, c3] = [columns[c]!, columns[c + 1]!, columns[c + 2]!, columns[c + 3]!]
-        const [a, b, d, e] = [c0 * ordinary, c1 * ordinary, c2 * ordinary, c3 * ordinary]
-        let [s0, s1, s2, s3] = [0, 0, 0, 0]
-        for (let n = 0; n < ordinary; n++) {
-          const f = right[r + n]!
-          s0 += f * left[a + n]!
-          s1 += f * left[b + n]!
-          s2 += f * left[d + n]!
-          s3 += f * left[e + n]!
-        }
-        out[start + c0]! += s0
-        out[start + c1]! += s1
-        out[start + c2]! += s2
-        out[start + c3]! += s3
-      }
-      for (; c < count; c++) {
-        const a = columns[c]! * ordinary
-        let sum = 0
-        for (let n = 0; n < ordinary; n++) sum += right[r + n]! * left[a + n]!
-        out[start + columns[c]!]! += sum
-      }
+    const { left, right, length, weak } = this
+    for (let c = 0; c < count; c++) {
+      const column = columns[c]!
+      let current = dot(left, column * length, right, row * length, length)
+      if (weak.count > 0) current += weakCurrent(weak, column * weak.count, row * weak.count)
+      out[start + column]! += current
     }
-    if (this.weak.length > 0)
-      for (c = 0; c < count; c++) out[start + columns[c]!]! += this.weakCurrent(row, columns[c]!)
-  }
-
-  private weakCurrent(row: number, column: number): number {
-    const { segment, base, x, y, fixed, weak } = this
-    if (segment.isBeyond && !(x.counts[column] || y.counts[row] || fixed.counts[0])) return 0
-    const points = segment.wavelengthNm.length
-    let sum = 0
-    for (let w = 0; w < weak.length; w++) {
-      const k = weak[w]!
-      const [ix, iy] = [column * points + k, row * points + k]
-      const now = fixed.absorptance[k]! * x.absorptance[ix]! * y.absorptance[iy]!
-      const gained = now - base.absorptance[k]!
-      const eqe =
-        gained > 0
-          ? segment.eqe[k]! + base.collection[k]! * gained
-          : segment.eqe[k]! * (fixed.ratio[k]! * x.ratio[ix]! * y.ratio[iy]!)
-      sum += segment.weights[k]! * eqe
-    }
-    return sum
   }
 }
 
-/**
- * Factors for one axis: the measured device with the changes and the axis value of junction `owner` only; or, without an
- * axis, with the changes of all junctions but `others`. The absolute A' stands in the table of the group that holds the
- * segment's own junction.
- */
-function factorsOf(
-  compiled: CompiledDevice,
-  s: number,
-  change: Change,
-  owner: number,
-  axis?: ResolvedAxis,
-  others: readonly number[] = [],
-): Factors {
+function weakCurrent(weak: WeakPoints, x: number, y: number): number {
+  const { count, measured, collection, before, ratioX, ratioY, absorptanceX, absorptanceY } = weak
+  let sum = 0
+  for (let w = 0; w < count; w++) {
+    const gained = absorptanceX[x + w]! * absorptanceY[y + w]! - before[w]!
+    sum += gained > 0 ? measured[w]! + collection[w]! * gained : ratioX[x + w]! * ratioY[y + w]!
+  }
+  return sum
+}
+
+/** Some points of every row, packed. A stride of 0 repeats the first row. */
+function gather(table: Float64Array, stride: number, rows: number, points: readonly number[]): Float64Array {
+  const packed = new Float64Array(rows * points.length)
+  for (let r = 0; r < rows; r++)
+    for (let n = 0; n < points.length; n++) packed[r * points.length + n] = table[r * stride + points[n]!]!
+  return packed
+}
+
+function project(matrix: Float64Array, rows: number, columns: number, basis: Float64Array, rank: number): Float64Array {
+  const projected = new Float64Array(rows * rank)
+  for (let r = 0; r < rows; r++)
+    for (let k = 0; k < rank; k++) projected[r * rank + k] = dot(matrix, r * columns, basis, k * columns, columns)
+  return projected
+}
+
+function silence(absorptance: Float64Array, counts: Uint8Array, points: number): void {
+  counts.forEach((isCounted, v) => {
+    if (!isCounted) absorptance.fill(0, v * points, (v + 1) * points)
+  })
+}
+
+function ownerOf(axis: ResolvedAxis): number {
+  return 'junction' in axis.parameter ? axis.parameter.junction : -1
+}
+
+/** Factors for the values of one axis: the measured device with all changes of that axis's junction, and no others. */
+function axisFactors(compiled: CompiledDevice, s: number, change: Change, axis: ResolvedAxis): Factors {
+  const segment = compiled.segments[s]!
+  const points = segment.wavelengthNm.length
+  const owner = ownerOf(axis)
+  if (owner > segment.junction) {
+    const ones = new Float64Array(points).fill(1)
+    return { stride: 0, ratio: ones, absorptance: ones, counts: Uint8Array.of(0), holdsOwn: false }
+  }
+  const state = measuredState(compiled.device)
+  copyJunction(state, compiled.state(change), owner)
+  const size = axis.values.length * points
+  const ratio = new Float64Array(size)
+  const absorptance = new Float64Array(size)
+  const counts = new Uint8Array(axis.values.length)
+  const holdsOwn = owner === segment.junction
+  axis.values.forEach((value, v) => {
+    setIn(compiled.device, state, axis.parameter, value, axis.key)
+    compiled.optics.begin(state)
+    const [from, to] = [v * points, (v + 1) * points]
+    compiled.optics.fill(s, ratio.subarray(from, to), absorptance.subarray(from, to))
+    counts[v] = holdsOwn && compiled.counts(segment, state) ? 1 : 0
+  })
+  // A' itself stands in the group that holds the segment's own junction; in the others only what it is multiplied by.
+  return { stride: points, ratio, absorptance: holdsOwn ? absorptance : ratio, counts, holdsOwn }
+}
+
+/** Factors of the changes of all junctions that no axis belongs to. */
+function fixedFactors(compiled: CompiledDevice, s: number, change: Change, owners: readonly number[]): Factors {
   const segment = compiled.segments[s]!
   const points = segment.wavelengthNm.length
   const changed = compiled.state(change)
   const state = measuredState(compiled.device)
-  const takes = (p: number): boolean => (axis ? p === owner : !others.includes(p))
-  for (let p = 0; p < state.thicknessNm.length; p++) if (takes(p)) copyJunction(state, changed, p)
-  const values = axis?.values ?? Float64Array.of(0)
-  const ratio = new Float64Array(values.length * points)
-  const absorptance = new Float64Array(values.length * points)
-  const counts = new Uint8Array(values.length)
-  const holdsOwn = takes(segment.junction)
-  values.forEach((value, v) => {
-    if (axis) setIn(compiled.device, state, axis.parameter, value, axis.key)
-    compiled.optics.begin(state)
-    const span = [v * points, (v + 1) * points] as const
-    compiled.optics.fill(s, ratio.subarray(...span), absorptance.subarray(...span))
-    counts[v] = holdsOwn && compiled.counts(segment, state) ? 1 : 0
-  })
-  return { ratio, absorptance: holdsOwn ? absorptance : ratio, counts }
+  for (let p = 0; p < state.thicknessNm.length; p++) if (!owners.includes(p)) copyJunction(state, changed, p)
+  const ratio = new Float64Array(points)
+  const absorptance = new Float64Array(points)
+  compiled.optics.begin(state)
+  compiled.optics.fill(s, ratio, absorptance)
+  const holdsOwn = !owners.includes(segment.junction)
+  return { stride: 0, ratio, absorptance: holdsOwn ? absorptance : ratio, counts: Uint8Array.of(1), holdsOwn }
 }
 
 function copyJunction(to: DeviceState, from: DeviceState, p: number): void {
