@@ -44,6 +44,10 @@ export class SeparableSegment {
   private readonly left: Float64Array
   private readonly right: Float64Array
   private readonly weak: WeakPoints
+  /** True when the x axis does not touch this junction's light. */
+  private readonly isColumnFixed: boolean
+  /** Currents by column, when the y axis does not touch it. */
+  private readonly byColumn: Float64Array | null
 
   /** Null for what lies beyond a scan when no point of the map lowers that junction's gap. */
   static make(
@@ -73,7 +77,9 @@ export class SeparableSegment {
     const ordinary: number[] = []
     const weak: number[] = []
     for (let k = 0; k < wavelengthNm.length; k++) (base.isWeak[k] ? weak : ordinary).push(k)
-    const [width, height] = [x.values.length, y.values.length]
+    // An axis that this junction's light does not meet has one row for all its values.
+    const width = fx.stride > 0 ? x.values.length : 1
+    const height = fy.stride > 0 ? y.values.length : 1
 
     const left = gather(fx.ratio, fx.stride, width, isBeyond ? [] : ordinary)
     const right = gather(fy.ratio, fy.stride, height, isBeyond ? [] : ordinary)
@@ -83,7 +89,7 @@ export class SeparableSegment {
         const k = ordinary[n]!
         left[i * points + n]! *= weights[k]! * (eqe[k]! * fixed.ratio[k]!)
       }
-    const low = points > 0 ? lowRankOf(left, width, points, ROUNDING, points >> 3) : null
+    const low = points > 0 && width > 1 && height > 1 ? lowRankOf(left, width, points, ROUNDING, points >> 3) : null
     this.length = low ? low.rank : points
     this.left = low ? low.coefficients : left
     this.right = low ? project(right, height, points, low.basis, low.rank) : right
@@ -111,17 +117,24 @@ export class SeparableSegment {
       absorptanceX,
       absorptanceY,
     }
+    this.isColumnFixed = width === 1
+    this.byColumn = height === 1 ? Float64Array.from({ length: width }, (_, i) => this.currentAt(i, 0)) : null
   }
 
   /** Adds this segment's current to some columns of a row. */
   addRow(row: number, columns: Int32Array, count: number, out: Float64Array, start: number): void {
+    const { byColumn } = this
+    if (this.isColumnFixed) {
+      const current = byColumn ? byColumn[0]! : this.currentAt(0, row)
+      for (let c = 0; c < count; c++) out[start + columns[c]!]! += current
+    } else if (byColumn) for (let c = 0; c < count; c++) out[start + columns[c]!]! += byColumn[columns[c]!]!
+    else for (let c = 0; c < count; c++) out[start + columns[c]!]! += this.currentAt(columns[c]!, row)
+  }
+
+  private currentAt(column: number, row: number): number {
     const { left, right, length, weak } = this
-    for (let c = 0; c < count; c++) {
-      const column = columns[c]!
-      let current = dot(left, column * length, right, row * length, length)
-      if (weak.count > 0) current += weakCurrent(weak, column * weak.count, row * weak.count)
-      out[start + column]! += current
-    }
+    const current = dot(left, column * length, right, row * length, length)
+    return weak.count > 0 ? current + weakCurrent(weak, column * weak.count, row * weak.count) : current
   }
 }
 
