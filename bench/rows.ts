@@ -1,0 +1,9 @@
+/** One line of the benchmark: what was done, how long it took here and in the peer, and how far the results differ. */
+export interface BenchRow {
+  readonly name: string
+  readonly oursMs: number
+  readonly peerMs: number
+  readonly peer: string
+  /** Largest absolute difference between the two results, in the result's own unit. */
+  readonly largestDifference: number
+}
