@@ -1,0 +1,72 @@
+import { IsNull } from 'typeorm'
+import type { Work } from '../transaction.js'
+import type { TimePosition } from './position.js'
+import { Scan } from '../entities/Scan.js'
+import { SourceFile } from '../entities/SourceFile.js'
+import { Spectrum } from '../entities/Spectrum.js'
+
+export async function sourceFileOfProject(
+  work: Work,
+  projectId: string,
+  sourceFileId: string,
+): Promise<SourceFile | null> {
+  return work.findOne(SourceFile, { where: { id: sourceFileId, projectId }, relations: { uploadedBy: true } })
+}
+
+/** Locks the file's row until the transaction ends, so that two confirmations of one file come one after the other. */
+export async function lockSourceFile(work: Work, projectId: string, sourceFileId: string): Promise<boolean> {
+  const found = await work.findOne(SourceFile, {
+    where: { id: sourceFileId, projectId },
+    lock: { mode: 'pessimistic_write' },
+  })
+  return found !== null
+}
+
+export async function bytesOfSourceFile(work: Work, sourceFileId: string): Promise<Buffer> {
+  const { bytes } = await work.findOneOrFail(SourceFile, {
+    select: { id: true, bytes: true },
+    where: { id: sourceFileId },
+  })
+  return bytes
+}
+
+export async function sourceFileWithBytes(work: Work, projectId: string, sha256: string): Promise<SourceFile | null> {
+  return work.findOne(SourceFile, { where: { projectId, sha256 }, relations: { uploadedBy: true } })
+}
+
+/** Newest first. */
+export async function sourceFilesOfProject(
+  work: Work,
+  projectId: string,
+  state: SourceFile['state'] | undefined,
+  after: TimePosition | null,
+  limit: number,
+): Promise<{ files: SourceFile[]; total: number }> {
+  const query = work.createQueryBuilder(SourceFile, 'file').where('file.projectId = :projectId', { projectId })
+  if (state) query.andWhere('file.state = :state', { state })
+  const total = await query.clone().getCount()
+  if (after) query.andWhere('(file.uploadedAt < :at OR (file.uploadedAt = :at AND file.id < :id))', after)
+  const files = await query
+    .innerJoinAndSelect('file.uploadedBy', 'uploadedBy')
+    .orderBy('file.uploadedAt', 'DESC')
+    .addOrderBy('file.id', 'DESC')
+    .limit(limit)
+    .getMany()
+  return { files, total }
+}
+
+export async function insertSourceFile(work: Work, file: Omit<SourceFile, 'project' | 'uploadedBy'>): Promise<void> {
+  await work.insert(SourceFile, file)
+}
+
+/** `read` as long as a scan or a spectrum rests on the file, `uploaded` otherwise. */
+export async function refreshSourceFileState(work: Work, sourceFileId: string): Promise<void> {
+  const isUsed =
+    (await work.existsBy(Scan, { sourceFileId, deletedAt: IsNull() })) ||
+    (await work.existsBy(Spectrum, { sourceFileId }))
+  await work.update(SourceFile, { id: sourceFileId }, { state: isUsed ? 'read' : 'uploaded' })
+}
+
+export async function removeSourceFile(work: Work, sourceFileId: string): Promise<void> {
+  await work.delete(SourceFile, { id: sourceFileId })
+}

@@ -1,0 +1,6 @@
+import type { CurveData } from '../../shared/contract/primitives.js'
+import type { Curve } from '../../shared/physics/curve.js'
+
+export function presentCurve({ wavelengthNm, values }: Curve): CurveData {
+  return { wavelengthNm: [...wavelengthNm], values: [...values] }
+}

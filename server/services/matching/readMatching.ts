@@ -1,0 +1,22 @@
+import type { Matching } from '../../../shared/contract/matching.js'
+import type { SpectrumChoice } from '../../../shared/contract/spectra.js'
+import type { Database } from '../../database/transaction.js'
+import type { Actor } from '../actor.js'
+import { findDevice } from '../devices/findDevice.js'
+import { requireMember } from '../rights.js'
+import { chooseSpectrum } from '../spectra/chooseSpectrum.js'
+import { computeMatching } from './computeMatching.js'
+import { measureDevices } from './measureDevices.js'
+
+export async function readMatching(
+  { work }: Database,
+  actor: Actor,
+  projectId: string,
+  deviceId: string,
+  choice: SpectrumChoice,
+): Promise<Matching> {
+  await requireMember(work, actor, projectId, 'read')
+  const spectrum = await chooseSpectrum(work, projectId, choice)
+  const [device] = await measureDevices(work, [await findDevice(work, projectId, deviceId)])
+  return computeMatching(device!.measured, spectrum)
+}
