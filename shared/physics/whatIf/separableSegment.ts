@@ -1,4 +1,4 @@
-import { dot, lowRankOf } from '../numerics/lowRank.js'
+import { dot, lowRankOf, project } from '../numerics/lowRank.js'
 import type { CompiledDevice } from './compiledDevice.js'
 import type { Change } from './device.js'
 import type { ResolvedAxis } from './mapAxis.js'
@@ -89,10 +89,11 @@ export class SeparableSegment {
         const k = ordinary[n]!
         left[i * points + n]! *= weights[k]! * (eqe[k]! * fixed.ratio[k]!)
       }
-    const low = points > 0 && width > 1 && height > 1 ? lowRankOf(left, width, points, ROUNDING, points >> 3) : null
-    this.length = low ? low.rank : points
-    this.left = low ? low.coefficients : left
-    this.right = low ? project(right, height, points, low.basis, low.rank) : right
+    const isBoth = points > 0 && width > 1 && height > 1
+    const short = isBoth ? shorten(left, right, width, height, points, isAnalytic(x), isAnalytic(y)) : null
+    this.length = short?.rank ?? points
+    this.left = short?.left ?? left
+    this.right = short?.right ?? right
 
     const count = weak.length
     // Beyond its scan a segment counts only at some values: there A' stands at nothing, which is never a gain.
@@ -156,11 +157,31 @@ function gather(table: Float64Array, stride: number, rows: number, points: reado
   return packed
 }
 
-function project(matrix: Float64Array, rows: number, columns: number, basis: Float64Array, rank: number): Float64Array {
-  const projected = new Float64Array(rows * rank)
-  for (let r = 0; r < rows; r++)
-    for (let k = 0; k < rank; k++) projected[r * rank + k] = dot(matrix, r * columns, basis, k * columns, columns)
-  return projected
+/** Transmission is analytic in a thickness and a path factor; in a gap it has the kinks of tables and of the tail. */
+function isAnalytic(axis: ResolvedAxis): boolean {
+  return axis.parameter.kind === 'thickness' || axis.parameter.kind === 'pathFactor'
+}
+
+/** Both tables along the few directions that the rows of one of them span; null where neither is known to have few. */
+function shorten(
+  left: Float64Array,
+  right: Float64Array,
+  width: number,
+  height: number,
+  points: number,
+  isLeftAnalytic: boolean,
+  isRightAnalytic: boolean,
+): { left: Float64Array; right: Float64Array; rank: number } | null {
+  const highestRank = points >> 3
+  const ofLeft = isLeftAnalytic ? lowRankOf(left, width, points, ROUNDING, highestRank) : null
+  if (ofLeft) {
+    const { rank, basis, coefficients } = ofLeft
+    return { rank, left: coefficients, right: project(right, height, points, basis, rank) }
+  }
+  const ofRight = isRightAnalytic ? lowRankOf(right, height, points, ROUNDING, highestRank) : null
+  if (!ofRight) return null
+  const { rank, basis, coefficients } = ofRight
+  return { rank, left: project(left, width, points, basis, rank), right: coefficients }
 }
 
 function silence(absorptance: Float64Array, counts: Uint8Array, points: number): void {

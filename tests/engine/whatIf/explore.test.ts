@@ -15,7 +15,7 @@ import { input } from './perovskiteOnSilicon.js'
 const compiled = compileDevice(input)
 const matrix = compileDevice({ ...input, model: 'transfer-matrix' })
 const thicknessSweep = sweep(compiled, { parameter: '1.thicknessNm', from: 150, to: 1500 })
-const gapThickness = (points: number): MapRequest => ({
+const thicknesses = (points: number): MapRequest => ({
   x: { parameter: '1.thicknessNm', from: 150, to: 1500, points },
   y: { parameter: '2.thicknessNm', from: 40_000, to: 300_000, points },
 })
@@ -70,11 +70,11 @@ describe('sensitivities', () => {
 })
 
 describe('map', () => {
-  const map = computeMap(compiled, { ...gapThickness(200), withEfficiency: true })
+  const map = computeMap(compiled, { ...thicknesses(200), withEfficiency: true })
 
   it.each([
-    ['two junctions', compiled, gapThickness(7)],
-    ['with other changes', compiled, { ...gapThickness(7), change: { '1.bandGapEv': 1.7, '2.pathFactor': 4 } }],
+    ['two junctions', compiled, thicknesses(7)],
+    ['with other changes', compiled, { ...thicknesses(7), change: { '1.bandGapEv': 1.7, '2.pathFactor': 4 } }],
     [
       'a gap that is lowered, against a thickness',
       compiled,
@@ -112,9 +112,36 @@ describe('map', () => {
     )
   })
 
+  it.each([
+    ['two thicknesses', map],
+    [
+      'a gap and a thickness',
+      computeMap(compiled, {
+        x: { parameter: '1.bandGapEv', from: 1.55, to: 1.8, points: 90 },
+        y: { parameter: '2.thicknessNm', from: 5e4, to: 3e5, points: 80 },
+      }),
+    ],
+    [
+      'a thickness and a path factor',
+      computeMap(compiled, {
+        x: { parameter: '2.pathFactor', from: 1, to: 50, points: 120 },
+        y: { parameter: '1.thicknessNm', from: 100, to: 2000, points: 70 },
+      }),
+    ],
+  ])('a large one too, though its sums are shortened: %s', (_, large) => {
+    const width = large.x.values.length
+    for (let index = 0; index < large.mismatch.length; index += 631) {
+      const [x, y] = [large.x.values[index % width]!, large.y.values[Math.floor(index / width)]!]
+      const { currentsMaCm2 } = evaluate(compiled, { [large.x.parameter]: x, [large.y.parameter]: y })
+      currentsMaCm2.forEach((expected, p) =>
+        expect(Math.abs(large.currentsMaCm2[p]![index]! - expected)).toBeLessThan(1e-11),
+      )
+    }
+  })
+
   it('comes from coarse to fine, can be stopped, and ends as the whole map', () => {
     const strides: number[] = []
-    const passes = mapProgress(compiled, gapThickness(60))
+    const passes = mapProgress(compiled, thicknesses(60))
     let step = passes.next()
     while (!step.done) {
       strides.push(step.value.stride)
@@ -122,15 +149,15 @@ describe('map', () => {
     }
     expect(strides[0]).toBe(16)
     expect([...strides]).toEqual([...strides].sort((a, b) => b - a))
-    expect(step.value.currentsMaCm2).toEqual(computeMap(compiled, gapThickness(60)).currentsMaCm2)
-    const stopped = mapProgress(compiled, gapThickness(60))
+    expect(step.value.currentsMaCm2).toEqual(computeMap(compiled, thicknesses(60)).currentsMaCm2)
+    const stopped = mapProgress(compiled, thicknesses(60))
     stopped.next()
     stopped.return(step.value)
     expect(stopped.next().done).toBe(true)
   })
 
   it('the matched line passes through the matching point of the sweep', () => {
-    const request = gapThickness(60)
+    const request = thicknesses(60)
     const line = matchedLine(compiled, request, computeMap(compiled, request))
     expect(line.length).toBeGreaterThan(30)
     for (const { x, y } of line.filter((_, i) => i % 9 === 0)) {
@@ -177,7 +204,7 @@ describe('map', () => {
   })
 
   it('refuses one parameter on both axes', () => {
-    const { x } = gapThickness(5)
+    const { x } = thicknesses(5)
     expect(() => computeMap(compiled, { x, y: x })).toThrow(/two parameters/)
   })
 })
