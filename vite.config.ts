@@ -8,6 +8,6 @@ export default defineConfig({
   build: { outDir: 'dist/client', emptyOutDir: true, target: 'es2023', assetsInlineLimit: 0 },
   server: {
     host: '127.0.0.1',
-    proxy: { '/api': process.env['TIERLIGHT_API_ADDRESS'] ?? 'http://127.0.0.1:4173' },
+    proxy: { '/api': process.env['TIERLIGHT_API_ADDRESS'] ?? 'http://127.0.0.1:4180' },
   },
 })
