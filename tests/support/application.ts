@@ -48,7 +48,9 @@ export interface Application {
   as(who: CallerName): Caller
   /** A new browser, signed in with address and password; without them, signed out. */
   open(email?: string, password?: string): Promise<Caller>
-  /** Adds a person with `PASSWORD`, and a membership where roles are given. */
+  /** Another project with the same members in the same roles. */
+  addProject(name: string): Promise<{ id: string; name: string }>
+  /** Adds a person with `PASSWORD`, and a membership of the first project where roles are given. */
   addPerson(name: string, roles?: Role[]): Promise<TestPerson>
   /** A second server on the same database. */
   startSecondServer(): Promise<{ address: string; open: Application['open'] }>
@@ -75,15 +77,14 @@ export async function startApplication(settings: Record<string, string> = {}): P
   const first = await startServer()
 
   const passwordHash = await hashPassword(PASSWORD)
-  const project = await addProject()
   const people = {} as Record<PersonName, TestPerson>
   const browsers = { 'signed-out': await first.open() } as Record<CallerName, Caller>
   for (const who of CALLERS) {
     if (who === 'signed-out') continue
-    const isMember = who !== 'outsider' && who !== 'administrator'
-    people[who] = await addPerson(`Test ${who}`, isMember ? [who] : undefined, who === 'administrator')
+    people[who] = await addAccount(`Test ${who}`, who === 'administrator')
     browsers[who] = await first.open(people[who].email)
   }
+  const project = await addProject('Test project')
 
   return {
     config,
@@ -94,7 +95,12 @@ export async function startApplication(settings: Record<string, string> = {}): P
     people,
     as: (who) => browsers[who],
     open: first.open,
-    addPerson: (name, roles) => addPerson(name, roles),
+    addProject,
+    addPerson: async (name, roles) => {
+      const person = await addAccount(name)
+      if (roles) await addMember(project.id, person.id, roles)
+      return person
+    },
     startSecondServer: startServer,
     async stop() {
       for (const server of servers) {
@@ -120,25 +126,22 @@ export async function startApplication(settings: Record<string, string> = {}): P
     }
   }
 
-  async function addProject() {
+  async function addProject(name: string) {
     const id = uuid()
-    const name = 'Test project'
     const row = { id, name, description: '', archived: false, version: 1, createdAt: new Date(), deletedAt: null }
     await dataSource.manager.insert(Project, row)
+    for (const role of ROLES) await addMember(id, people[role].id, [role])
     return { id, name }
   }
 
-  async function addPerson(name: string, roles?: Role[], isAdministrator = false): Promise<TestPerson> {
+  async function addMember(projectId: string, userId: string, roles: Role[]): Promise<void> {
+    await dataSource.manager.insert(Membership, { projectId, userId, roles, since: new Date() })
+  }
+
+  async function addAccount(name: string, isAdministrator = false): Promise<TestPerson> {
     const person = { id: uuid(), name, email: `${name.toLowerCase().replaceAll(' ', '.')}@lab.example` }
     const account = { passwordHash, isAdministrator, disabled: false, createdAt: new Date(), lastSignInAt: null }
     await dataSource.manager.insert(User, { ...person, ...account })
-    if (roles)
-      await dataSource.manager.insert(Membership, {
-        projectId: project.id,
-        userId: person.id,
-        roles,
-        since: new Date(),
-      })
     return person
   }
 }

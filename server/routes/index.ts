@@ -1,0 +1,21 @@
+import type { MakeRouter } from '../app.js'
+import { accountRouter } from './account.js'
+import { administrationRouter } from './administration.js'
+import { apiDocumentRouter } from './apiDocument.js'
+import { devicesRouter } from './devices.js'
+import { matchingRouter } from './matching.js'
+import { peopleRouter } from './people.js'
+import { projectsRouter } from './projects.js'
+import { scansRouter } from './scans.js'
+
+/** Every router. A new resource is one file and one line here. */
+export const ROUTERS: readonly MakeRouter[] = [
+  accountRouter,
+  projectsRouter,
+  peopleRouter,
+  devicesRouter,
+  matchingRouter,
+  scansRouter,
+  administrationRouter,
+  apiDocumentRouter,
+]
