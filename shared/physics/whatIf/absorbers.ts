@@ -32,9 +32,14 @@ export function resolveAbsorber(junction: JunctionModel, number: number, materia
   return { absorber: resolved, measuredShiftEv }
 }
 
-/** The longest wavelength at which an absorber is known, nm; Infinity for the parametric edge. */
-export function absorberEndNm({ absorber }: JunctionAbsorber): number {
-  return absorber.kind === 'edge' ? Infinity : opticalRangeNm(absorber.table)[1]
+/** The wavelengths at which an absorber is known, nm; 0 to Infinity for the parametric edge. */
+export function absorberRangeNm({ absorber }: JunctionAbsorber): [number, number] {
+  return absorber.kind === 'edge' ? [0, Infinity] : opticalRangeNm(absorber.table)
+}
+
+/** What several ranges have in common; the first is above the second when it is nothing. */
+export function commonRange(ranges: readonly (readonly [number, number])[]): [number, number] {
+  return [Math.max(...ranges.map(([from]) => from)), Math.min(...ranges.map(([, to]) => to))]
 }
 
 /** Absorption of one absorber on one grid for any shift of its gap; recent shifts are kept. */

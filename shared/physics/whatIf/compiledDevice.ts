@@ -3,14 +3,15 @@ import { STANDARD_TEMPERATURE_K } from '../constants.js'
 import { assertCurve } from '../curve.js'
 import { assertNotNegative, assertPositive, DomainError } from '../errors.js'
 import { weightedSum } from '../uncertainty/currentWeights.js'
-import { absorberEndNm, resolveAbsorber, type JunctionAbsorber } from './absorbers.js'
+import { absorberRangeNm, commonRange, resolveAbsorber, type JunctionAbsorber } from './absorbers.js'
 import { BeerLambertModel } from './beerLambertModel.js'
 import { statedGapEv, type Change, type DeviceModel, type OpticalModelName, type WhatIfInput } from './device.js'
 import type { OpticalModel } from './opticalModel.js'
 import { changedState, measuredState, parameterKeys, parseParameter, valueIn, type DeviceState } from './parameters.js'
+import { PartialModel, spanWithin, trimmed, type Span } from './partialModel.js'
 import { PowerEstimator } from './powerEstimate.js'
 import { anchor, anchorBeyond, anchorScan, makeSegments, type Segment, type SegmentBase } from './segment.js'
-import { stackEndNm, TransferMatrixModel } from './transferMatrixModel.js'
+import { stackRangeNm, TransferMatrixModel } from './transferMatrixModel.js'
 
 /** Work space of one segment. */
 interface Buffers {
@@ -35,6 +36,8 @@ export class CompiledDevice {
   /** J of each junction as measured, mA cm⁻². */
   readonly measuredCurrentsMaCm2: Float64Array
   readonly optics: OpticalModel
+  /** Where the optical model speaks on each segment. */
+  readonly spans: readonly Span[]
   private readonly buffers: readonly Buffers[]
   private readonly input: WhatIfInput
 
@@ -52,16 +55,28 @@ export class CompiledDevice {
     this.absorbers = absorbers
     this.model = input.model ?? 'beer-lambert'
     const isMatrix = this.model === 'transfer-matrix'
-    const reach = device.junctions.map((_, p) =>
+    const ranges = device.junctions.map((_, p) =>
       isMatrix
-        ? stackEndNm(device, absorbers, input.materials)
-        : Math.min(...absorbers.slice(0, p + 1).map(absorberEndNm)),
+        ? stackRangeNm(device, absorbers, input.materials)
+        : commonRange(absorbers.slice(0, p + 1).map(absorberRangeNm)),
     )
-    const segments = makeSegments(eqe, spectrum, reach)
+    const segments = makeSegments(
+      eqe,
+      spectrum,
+      ranges.map(([, to]) => to),
+    )
+    const isPartial = input.outsideMaterials === 'keep-measured'
+    const spans = segments.map((segment): Span =>
+      isPartial ? spanWithin(segment, ranges[segment.junction]!) : [0, segment.wavelengthNm.length],
+    )
+    const known = isPartial ? segments.map((segment, s) => trimmed(segment, spans[s]!)) : segments
+    const optics = isMatrix
+      ? new TransferMatrixModel(known, device, absorbers, input.materials, measured)
+      : new BeerLambertModel(known, absorbers, measured)
+    const lengths = segments.map(({ wavelengthNm }) => wavelengthNm.length)
     this.segments = segments
-    this.optics = isMatrix
-      ? new TransferMatrixModel(segments, device, absorbers, input.materials, measured)
-      : new BeerLambertModel(segments, absorbers, measured)
+    this.spans = spans
+    this.optics = isPartial ? new PartialModel(optics, spans, lengths) : optics
     const ownShare = input.continuation?.ownShare ?? 0.01
     const least = input.continuation?.absorptance ?? 0.001
     const scans = device.junctions.map((_, p) => {
@@ -130,8 +145,9 @@ export class CompiledDevice {
   private gapShiftLimitsEv(junction: number): [number, number] {
     const { absorber, measuredShiftEv } = this.absorbers[junction]!
     const grids = this.input.eqe.slice(this.model === 'transfer-matrix' ? 0 : junction).map((c) => c.wavelengthNm)
-    const from = Math.min(...grids.map((grid) => grid[0]!))
-    const to = Math.max(...grids.map((grid) => grid[grid.length - 1]!))
+    const spans = this.spans.slice(this.model === 'transfer-matrix' ? 0 : junction, this.input.eqe.length)
+    const from = Math.min(...grids.map((grid, g) => grid[spans[g]![0]]!))
+    const to = Math.max(...grids.map((grid, g) => grid[spans[g]![1] - 1]!))
     const [low, high] = gapShiftRangeEv(absorber, from, to)
     return [Math.min(0, low - measuredShiftEv), Math.max(0, high - measuredShiftEv)]
   }

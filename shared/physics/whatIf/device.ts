@@ -84,6 +84,11 @@ export interface WhatIfInput {
   /** K. Default 298.15. */
   readonly temperatureK?: number
   readonly continuation?: ContinuationLimits
+  /**
+   * What to do at wavelengths of a scan where a material is not known: refuse (default), or keep the measured EQE there as
+   * it is and tell which wavelengths that were. Nothing is extrapolated either way.
+   */
+  readonly outsideMaterials?: 'refuse' | 'keep-measured'
 }
 
 /**

@@ -2,6 +2,7 @@ import type { Curve } from '../curve.js'
 import { weightedSum } from '../uncertainty/currentWeights.js'
 import type { CompiledDevice } from './compiledDevice.js'
 import type { Change } from './device.js'
+import type { Span } from './partialModel.js'
 import type { PowerEstimate } from './powerEstimate.js'
 import { seriesFigures, type SeriesFigures } from './seriesFigures.js'
 
@@ -19,6 +20,8 @@ export interface ChangedJunction {
   readonly measuredPartMaCm2: number
   /** What rests on a continued collection efficiency. */
   readonly continuedPartMaCm2: number
+  /** Wavelengths of the scan that the materials do not reach, where the measured EQE was kept: [from, to] in nm. */
+  readonly keptMeasuredNm: readonly (readonly [number, number])[]
 }
 
 export interface WhatIfResult extends SeriesFigures {
@@ -61,6 +64,7 @@ export function evaluate(compiled: CompiledDevice, change: Change): WhatIfResult
       currentMaCm2: total + (further?.current ?? 0),
       measuredPartMaCm2: total - continuedPart,
       continuedPartMaCm2: continuedPart + (further?.current ?? 0),
+      keptMeasuredNm: keptRanges(eqe.wavelengthNm, compiled.spans[p]!),
     }
   })
   const currentsMaCm2 = junctions.map((junction) => junction.currentMaCm2)
@@ -72,4 +76,11 @@ export function evaluate(compiled: CompiledDevice, change: Change): WhatIfResult
     power: compiled.power.estimate(currentsMaCm2, state.gapShiftEv),
     assumptions: compiled.power.assumptions,
   }
+}
+
+function keptRanges(wavelengthNm: Float64Array, [low, high]: Span): [number, number][] {
+  const ranges: [number, number][] = []
+  if (low > 0) ranges.push([wavelengthNm[0]!, wavelengthNm[low - 1]!])
+  if (high < wavelengthNm.length) ranges.push([wavelengthNm[high]!, wavelengthNm[wavelengthNm.length - 1]!])
+  return ranges
 }

@@ -7,7 +7,7 @@ import {
 } from '../absorption/index.js'
 import { DomainError } from '../errors.js'
 import { StackSolver, type Dispersion, type StackLayer, type StackOptics } from '../optics/index.js'
-import { absorberEndNm, AbsorptionOnGrid, type JunctionAbsorber } from './absorbers.js'
+import { absorberRangeNm, AbsorptionOnGrid, commonRange, type JunctionAbsorber } from './absorbers.js'
 import type { DeviceModel, LayerModel } from './device.js'
 import type { OpticalModel } from './opticalModel.js'
 import type { DeviceState } from './parameters.js'
@@ -162,15 +162,15 @@ export class TransferMatrixModel implements OpticalModel {
   }
 }
 
-/** The longest wavelength that every material of the stack reaches, nm. */
-export function stackEndNm(
+/** The wavelengths at which every material of the stack is known, nm. */
+export function stackRangeNm(
   device: DeviceModel,
   absorbers: readonly JunctionAbsorber[],
   materials: MaterialLibrary,
-): number {
-  const ends = absorbers.map(absorberEndNm)
+): [number, number] {
+  const ranges = absorbers.map(absorberRangeNm)
   const add = (material: string | number | undefined, argument: string): void => {
-    if (typeof material === 'string') ends.push(opticalRangeNm(materialById(materials, material, argument))[1])
+    if (typeof material === 'string') ranges.push(opticalRangeNm(materialById(materials, material, argument)))
   }
   for (const layer of device.layers ?? []) if ('name' in layer) add(layer.material, `layer.${layer.name}.material`)
   device.junctions.forEach(({ absorber }, p) => {
@@ -178,7 +178,7 @@ export function stackEndNm(
       add(absorber.refractiveIndex.material, `${p + 1}.absorber.refractiveIndex`)
   })
   add(device.exit, 'exit')
-  return Math.min(...ends)
+  return commonRange(ranges)
 }
 
 function extinction(alphaPerCm: Float64Array, wavelengthNm: Float64Array): Float64Array {

@@ -104,6 +104,37 @@ describe('Beer–Lambert', () => {
   })
 })
 
+describe('materials that end before the scan does', () => {
+  const coating = { name: 'test coating', wavelengthNm: [340, 900, 1150], n: [1.4, 1.38, 1.38], k: [0, 0, 0] }
+  const short: WhatIfInput = {
+    ...input,
+    model: 'transfer-matrix',
+    materials: { coating },
+    device: {
+      ...device,
+      layers: device.layers!.map((l) => ('name' in l && l.name === 'coating' ? { ...l, material: 'coating' } : l)),
+    },
+  }
+
+  it('are refused with their range', () => {
+    expect(() => compileDevice(short)).toThrow(/test coating is known from 340 to 1150 nm; it was asked for at 300 nm/)
+  })
+
+  it('or leave the measured EQE as it is where asked to, and tell where', () => {
+    const result = evaluate(compileDevice({ ...short, outsideMaterials: 'keep-measured' }), { '1.thicknessNm': 300 })
+    const bottom = result.junctions[1]!
+    expect(bottom.keptMeasuredNm).toEqual([
+      [320, 335],
+      [1155, 1190],
+    ])
+    bottom.eqe.wavelengthNm.forEach((nm, i) => {
+      if (nm < 340 || nm > 1150) expect(bottom.eqe.values[i]).toBe(eqe[1]!.values[i])
+      else if (nm < 700) expect(bottom.eqe.values[i]).not.toBe(eqe[1]!.values[i])
+    })
+    expect(result.junctions[0]!.keptMeasuredNm).toEqual([[300, 335]])
+  })
+})
+
 describe('figures of the stack', () => {
   const compiled = compileDevice(input)
 
