@@ -1,7 +1,7 @@
 import type { Request, Response, Router } from 'express'
 import type { z } from 'zod'
 import { ApiError, type FieldError } from '../../shared/contract/errors.js'
-import type { Route } from '../../shared/contract/route.js'
+import type { Access, Route } from '../../shared/contract/route.js'
 import { requireAdministrator, type Actor } from '../services/actor.js'
 
 type Parsed<Schema extends z.ZodType> = z.output<Schema>
@@ -16,7 +16,7 @@ export interface Call<Params, Query, Body, Who> {
   response: Response
 }
 
-type WhoOf<Access> = Access extends 'public' ? Actor | null : Actor
+type WhoOf<Who extends Access> = Who extends 'public' ? Actor | null : Actor
 
 /**
  * Serves one route of the contract: parses path, query and body by its schemas, asks for a sign-in where the route
@@ -28,11 +28,11 @@ export function serve<
   Query extends z.ZodType,
   Body extends z.ZodType,
   Reply extends z.ZodType,
-  R extends Route<Params, Query, Body, Reply>,
+  Who extends Access,
 >(
   router: Router,
-  route: R & Route<Params, Query, Body, Reply>,
-  handler: (call: Call<Parsed<Params>, Parsed<Query>, Parsed<Body>, WhoOf<R['access']>>) => Promise<z.input<Reply>>,
+  route: Route<Params, Query, Body, Reply, Who>,
+  handler: (call: Call<Parsed<Params>, Parsed<Query>, Parsed<Body>, WhoOf<Who>>) => Promise<z.input<Reply>>,
 ): void {
   router[route.method](route.path, async (request, response) => {
     const actor = actorOf(request)
@@ -45,7 +45,7 @@ export function serve<
       actor,
       request,
       response,
-    } as Call<Parsed<Params>, Parsed<Query>, Parsed<Body>, WhoOf<R['access']>>
+    } as Call<Parsed<Params>, Parsed<Query>, Parsed<Body>, WhoOf<Who>>
     const reply = await handler(call)
     if (route.transfer === 'bytes') return
     if (request.app.get('check replies')) route.reply.parse(reply)

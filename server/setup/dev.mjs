@@ -26,7 +26,11 @@ const children = [
     stdio: 'inherit',
     env,
   }),
-  spawn(bin('vite'), ['--host', '127.0.0.1'], { cwd: ROOT, stdio: 'inherit', env: { ...env, TIERLIGHT_API_ADDRESS: `http://127.0.0.1:${apiPort}` } }),
+  spawn(bin('vite'), ['--host', '127.0.0.1'], {
+    cwd: ROOT,
+    stdio: 'inherit',
+    env: { ...env, TIERLIGHT_API_ADDRESS: `http://127.0.0.1:${apiPort}` },
+  }),
 ]
 let stopping = false
 async function stop() {

@@ -13,6 +13,7 @@ export interface Route<
   Query extends z.ZodType = z.ZodType,
   Body extends z.ZodType = z.ZodType,
   Reply extends z.ZodType = z.ZodType,
+  Who extends Access = Access,
 > {
   readonly id: string
   readonly method: 'get' | 'post' | 'put' | 'patch' | 'delete'
@@ -20,7 +21,7 @@ export interface Route<
   readonly path: string
   readonly group: string
   readonly summary: string
-  readonly access: Access
+  readonly access: Who
   readonly params?: Params
   readonly query?: Query
   readonly body?: Body
@@ -36,7 +37,8 @@ export function defineRoute<
   Query extends z.ZodType,
   Body extends z.ZodType,
   Reply extends z.ZodType,
->(route: Route<Params, Query, Body, Reply>): Route<Params, Query, Body, Reply> {
+  const Who extends Access,
+>(route: Route<Params, Query, Body, Reply, Who>): Route<Params, Query, Body, Reply, Who> {
   return route
 }
 

@@ -1,4 +1,5 @@
 import { IsNull } from 'typeorm'
+import { isDuplicateKey } from '../databaseErrors.js'
 import type { Work } from '../transaction.js'
 import type { TimePosition } from './position.js'
 import { Scan } from '../entities/Scan.js'
@@ -30,10 +31,6 @@ export async function bytesOfSourceFile(work: Work, sourceFileId: string): Promi
   return bytes
 }
 
-export async function sourceFileWithBytes(work: Work, projectId: string, sha256: string): Promise<SourceFile | null> {
-  return work.findOne(SourceFile, { where: { projectId, sha256 }, relations: { uploadedBy: true } })
-}
-
 /** Newest first. */
 export async function sourceFilesOfProject(
   work: Work,
@@ -55,8 +52,30 @@ export async function sourceFilesOfProject(
   return { files, total }
 }
 
-export async function insertSourceFile(work: Work, file: Omit<SourceFile, 'project' | 'uploadedBy'>): Promise<void> {
-  await work.insert(SourceFile, file)
+/**
+ * Keeps a file, unless the project has the same bytes already: then their id is given. Two uploads of the same bytes at
+ * the same moment end with one row, which the unique key decides.
+ */
+export async function keepSourceFile(
+  work: Work,
+  file: Omit<SourceFile, 'project' | 'uploadedBy'>,
+): Promise<{ id: string; isKnown: boolean }> {
+  const sameBytes = { projectId: file.projectId, sha256: file.sha256 }
+  const known = await work.findOne(SourceFile, { select: { id: true }, where: sameBytes })
+  if (known) return { id: known.id, isKnown: true }
+  try {
+    await work.insert(SourceFile, file)
+    return { id: file.id, isKnown: false }
+  } catch (error) {
+    if (!isDuplicateKey(error)) throw error
+    // A locking read sees what another transaction has committed since this one began.
+    const { id } = await work.findOneOrFail(SourceFile, {
+      select: { id: true },
+      where: sameBytes,
+      lock: { mode: 'pessimistic_read' },
+    })
+    return { id, isKnown: true }
+  }
 }
 
 /** `read` as long as a scan or a spectrum rests on the file, `uploaded` otherwise. */

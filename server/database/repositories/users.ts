@@ -1,5 +1,6 @@
 import { User } from '../entities/User.js'
 import type { Work } from '../transaction.js'
+import type { NamePosition } from './position.js'
 
 export function userById(work: Work, id: string): Promise<User | null> {
   return work.findOneBy(User, { id })
@@ -28,4 +29,20 @@ export function numberOfUsers(work: Work): Promise<number> {
 /** Administrators who can sign in, locked until the transaction ends so that the last one cannot vanish twice. */
 export function activeAdministrators(work: Work): Promise<User[]> {
   return work.find(User, { where: { isAdministrator: true, disabled: false }, lock: { mode: 'pessimistic_write' } })
+}
+
+/** Keeps others from adding people until the transaction ends. */
+export async function lockUsers(work: Work): Promise<void> {
+  await work.createQueryBuilder(User, 'user').select('user.id').setLock('pessimistic_write').getMany()
+}
+
+/** By name; names may repeat, so the id decides. */
+export async function usersByName(
+  work: Work,
+  after: NamePosition | null,
+  limit: number,
+): Promise<{ users: User[]; total: number }> {
+  const query = work.createQueryBuilder(User, 'user').orderBy('user.name').addOrderBy('user.id').take(limit)
+  if (after) query.where('(user.name > :name OR (user.name = :name AND user.id > :id))', after)
+  return { users: await query.getMany(), total: await work.count(User) }
 }
