@@ -4,13 +4,12 @@ import { ENGINE_VERSION } from '../../../shared/physics/version.js'
 import { databaseState, storageState } from '../../database/repositories/site.js'
 import { mailCounts, mailNewestFirst } from '../../database/repositories/outbox.js'
 import type { Database } from '../../database/transaction.js'
+import { PRODUCT_VERSION } from '../../version.js'
 import { requireAdministrator, type Actor } from '../actor.js'
 import type { Context } from '../context.js'
 import { cursorAfter, timePosition } from '../cursor.js'
 
 const STARTED_AT = new Date()
-/** Of package.json; the build has no other place to read it from. */
-const VERSION = '0.1.0'
 
 export async function listOutbox({ work }: Database, actor: Actor, query: PageQuery): Promise<Page<OutboxMailReply>> {
   requireAdministrator(actor)
@@ -36,7 +35,7 @@ export async function listOutbox({ work }: Database, actor: Actor, query: PageQu
 export async function readHealth({ database, config }: Context, actor: Actor): Promise<Health> {
   requireAdministrator(actor)
   return {
-    version: VERSION,
+    version: PRODUCT_VERSION,
     engineVersion: ENGINE_VERSION,
     startedAt: STARTED_AT.toISOString(),
     database: await databaseState(database.work),
