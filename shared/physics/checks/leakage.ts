@@ -30,6 +30,9 @@ export function leaksOf(context: ScanInContext, others: readonly OtherJunction[]
   })
 }
 
+/** Above this share the two scans show one and the same junction, and this check cannot tell which scan is wrong. */
+const SAME_RESPONSE = 0.8
+
 /** A junction with a low shunt resistance lets the others' spectrum through: w_k < 1, w_j > 0. */
 export const leakage: Check = {
   name: 'leakage',
@@ -53,11 +56,21 @@ export const leakage: Check = {
     const others = otherJunctions(context)
     if (isMissing(others)) return notChecked(others.missing)
     const leaks = leaksOf(context, others)
-    const strong = leaks.filter((l) => l.weight > thresholds.cautionShare! && l.weight > 3 * l.uncertainty)
+    const strong = leaks.filter((l) => l.weight > thresholds.cautionShare! && l.weight > 4 * l.uncertainty)
     if (strong.length === 0)
       return leaks.length === others.length
         ? PASSED
         : notChecked('the scan has no band where another junction alone responds')
+    const same = strong.find((l) => l.weight > SAME_RESPONSE)
+    if (same)
+      return fired(this, {
+        severity: 'caution',
+        message:
+          `The scans of ${junctionName(context.junctionIndex)} and ${junctionName(same.index)} show the same response ` +
+          `at ${band(same.bandNm)} (${percent(same.weight, 0)}): in one of the two the junction under test did not limit.`,
+        numbers: { [`shareOfJunction${same.index + 1}`]: { value: same.weight, unit: '' } },
+        bandsNm: [same.bandNm],
+      })
     const worst = strong.reduce((a, b) => (b.weight > a.weight ? b : a))
     const parts = strong.map(
       (l) => `${percent(l.weight)} of ${junctionName(l.index)} (± ${percent(l.uncertainty, 2)}) at ${band(l.bandNm)}`,

@@ -2,6 +2,8 @@ import { median } from '../measurement/pointNoise.js'
 import { fired, notChecked, PASSED, type Check } from './check.js'
 
 const WINDOW = 2
+/** A phase below this signal-to-noise ratio says nothing. */
+const LEAST_SIGNAL_TO_NOISE = 8
 const DEGREES = 180 / Math.PI
 
 /** A junction that answers as one has one phase; two mixed junctions, or a slow trap, turn it over the scan. */
@@ -30,7 +32,7 @@ export const phaseWanders: Check = {
     let lowest: Turn | null = null
     let highest: Turn | null = null
     for (let i = 0; i < n; i++) {
-      if (!(magnitude[i]! > floor)) continue
+      if (!(magnitude[i]! > Math.max(floor, LEAST_SIGNAL_TO_NOISE * noise))) continue
       const from = Math.max(0, i - WINDOW)
       const to = Math.min(n, i + WINDOW + 1)
       const meanX = x.slice(from, to).reduce((sum, value) => sum + value, 0)

@@ -1,3 +1,4 @@
+import { pointNoise } from '../measurement/pointNoise.js'
 import { fired, PASSED, type Check } from './check.js'
 import { percent } from './wording.js'
 
@@ -13,10 +14,11 @@ export const truncatedRange: Check = {
   run(context, thresholds) {
     const { wavelengthNm: x, values: y } = context.scan
     const last = y.length - 1
+    const noise = pointNoise(context.scan)
     const ends = [
       { nm: x[0]!, next: x[1]!, response: y[0]! },
       { nm: x[last]!, next: x[last - 1]!, response: y[last]! },
-    ].filter((end) => end.response > thresholds.largestEdgeResponse!)
+    ].filter((end) => end.response > thresholds.largestEdgeResponse! + 2 * noise)
     if (ends.length === 0) return PASSED
     const words = ends.map((end) => `${percent(end.response)} at ${end.nm} nm`)
     return fired(this, {

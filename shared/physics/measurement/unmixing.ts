@@ -1,5 +1,5 @@
 import { assertCurve, valueAt, type Curve } from '../curve.js'
-import { DomainError } from '../errors.js'
+import { assertWithin, DomainError } from '../errors.js'
 import { nonNegativeLeastSquares } from '../numerics/nonNegativeLeastSquares.js'
 import { solveLinear } from '../numerics/linearSolve.js'
 import { foreignShare } from './exclusiveBand.js'
@@ -22,8 +22,17 @@ export interface Unmixed {
   readonly weights: MixingWeight[]
   /** Standard uncertainty that the correction adds at each point, from the weights and the noise of the other scans. */
   readonly addedUncertainty: Float64Array
-  /** 1 − Σ w_j: what the own response was divided by. */
+  /** 1 − Σ w_j, less the resistive share: what the own response was divided by. */
   readonly ownShare: number
+}
+
+export interface UnmixingOptions {
+  /**
+   * `R_s/(Σ r + R_s)` of each scan: the share of every signal that falls on the series and load resistance, 1 − Σ w of the
+   * small-signal model. It scales the whole scan, so that no scan can tell it; it matters when the junction under test
+   * is shunted to some tens of Ω cm². Default 0.
+   */
+  readonly resistiveShares?: readonly number[]
 }
 
 const ROUNDS = 25
@@ -39,13 +48,15 @@ const ROUNDS = 25
  * @throws DomainError for fewer than two scans, a scan without response, or weights of one scan that reach 1.
  * Cost: some rounds over n points and a small least-squares fit each.
  */
-export function unmixScans(scans: readonly Curve[]): Unmixed[] {
+export function unmixScans(scans: readonly Curve[], options: UnmixingOptions = {}): Unmixed[] {
   if (scans.length < 2)
     throw new DomainError(
       'scans',
       `There are ${scans.length} scans; unmixing needs a scan of every junction, two or more.`,
     )
+  const lost = options.resistiveShares ?? scans.map(() => 0)
   scans.forEach((scan, i) => {
+    assertWithin(lost[i] ?? NaN, 0, 0.5, `resistiveShares[${i}]`)
     assertCurve(scan, `scans[${i}]`)
     if (!scan.values.some((y) => y > 0)) throw new DomainError(`scans[${i}]`, `scans[${i}] has no response above zero.`)
   })
@@ -53,13 +64,13 @@ export function unmixScans(scans: readonly Curve[]): Unmixed[] {
   let current: readonly Curve[] = scans
   let weights: number[][] = scans.map(() => scans.map(() => 0))
   for (let round = 0; round < ROUNDS; round++) {
-    const next = scans.map((scan, k) => fitWeights(scan, k, current, bands[k]!))
+    const next = scans.map((scan, k) => fitWeights(scan, k, current, bands[k]!, lost[k]!))
     const moved = Math.max(...next.flatMap((row, k) => row.map((w, j) => Math.abs(w - weights[k]![j]!))))
     weights = next
-    current = solveMixture(scans, weights)
+    current = solveMixture(scans, weights, lost)
     if (moved < 1e-12) break
   }
-  return scans.map((scan, k) => describe(scan, k, scans, current, weights[k]!, bands[k]!))
+  return scans.map((scan, k) => describe(scan, k, scans, current, weights[k]!, bands[k]!, lost[k]!))
 }
 
 /**
@@ -98,7 +109,7 @@ function bandsOf(scans: readonly Curve[], scan: Curve, k: number): Band[] {
 }
 
 /** Weights of the corrected curves in scan k: its own corrected curve counts too, with 1 − Σ w on the same bands. */
-function fitWeights(scan: Curve, k: number, current: readonly Curve[], bands: readonly Band[]): number[] {
+function fitWeights(scan: Curve, k: number, current: readonly Curve[], bands: readonly Band[], lost: number): number[] {
   const weights = current.map(() => 0)
   if (bands.length === 0) return weights
   const rows: number[][] = []
@@ -110,13 +121,17 @@ function fitWeights(scan: Curve, k: number, current: readonly Curve[], bands: re
     }
   const { x } = nonNegativeLeastSquares(rows, right)
   bands.forEach((b, i) => (weights[b.index] = x[i]!))
-  ownShareOf(weights, k)
+  ownShareOf(weights, lost, k)
   return weights
 }
 
 /** The true curves from the apparent ones: at each wavelength of a scan the small system app = W true is solved. */
-function solveMixture(scans: readonly Curve[], weights: readonly (readonly number[])[]): Curve[] {
-  const matrix = weights.map((row, k) => row.map((w, j) => (j === k ? ownShareOf(row, k) : w)))
+function solveMixture(
+  scans: readonly Curve[],
+  weights: readonly (readonly number[])[],
+  lost: readonly number[],
+): Curve[] {
+  const matrix = weights.map((row, k) => row.map((w, j) => (j === k ? ownShareOf(row, lost[k]!, k) : w)))
   return scans.map((scan, k) => ({
     wavelengthNm: scan.wavelengthNm,
     values: scan.wavelengthNm.map((nm, i) => {
@@ -133,8 +148,9 @@ function describe(
   current: readonly Curve[],
   weights: readonly number[],
   bands: readonly Band[],
+  lost: number,
 ): Unmixed {
-  const ownShare = ownShareOf(weights, k)
+  const ownShare = ownShareOf(weights, lost, k)
   const noise = scans.map(pointNoise)
   const list = scans.flatMap((_, j): MixingWeight[] => {
     if (j === k) return []
@@ -156,8 +172,8 @@ function describe(
   return { corrected, weights: list, addedUncertainty, ownShare }
 }
 
-function ownShareOf(weights: readonly number[], k?: number): number {
-  const sum = weights.reduce((total, w) => total + w, 0)
+function ownShareOf(weights: readonly number[], lost = 0, k?: number): number {
+  const sum = weights.reduce((total, w) => total + w, lost)
   if (!(sum < 1))
     throw new DomainError(
       k === undefined ? 'weights' : `scans[${k}]`,
