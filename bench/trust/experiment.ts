@@ -59,16 +59,6 @@ export function trustRates(devices: number, seed: number): TrustRates {
       scans++
       const unexplained = report.findings.filter((f) => f.severity !== 'note' && !isExplained(f, measured, k, faults))
       for (const f of unexplained) byCheck[f.check]!.unexplained++
-      for (const f of unexplained)
-        (globalThis as any).log?.(
-          n,
-          k,
-          f.check,
-          f.severity,
-          f.message,
-          faults.map((x) => x.k + x.fault.check).join(),
-          measured[k]!.simulated.truth.selectivities.map((w) => w.toFixed(4)).join(),
-        )
       if (unexplained.some((f) => f.severity === 'reject')) falseRejects++
       if (unexplained.some((f) => f.severity === 'caution')) falseCautions++
     })

@@ -36,7 +36,6 @@ export const SPECTRUM = referenceSpectrum('AM1.5G')
 
 /** A night as it should be: every junction well selected, well away from every threshold. */
 export function planNight(device: RandomDevice, random: RandomSource): PlannedDevice {
-  const count = device.stack.eqes.length
   const last = Math.ceil((device.edgesNm.at(-1)! * 1.1) / 10) * 10
   const scans = device.stack.eqes.map((_, k): PlannedScan => {
     const currents = device.stack.eqes.map((__, j) => (j === k ? 0 : random.between(6, 14)))
@@ -62,7 +61,6 @@ export function planNight(device: RandomDevice, random: RandomSource): PlannedDe
       series: { factors: [0.5, 0.75, 1], ownIndex: 1 },
     }
   })
-  if (scans.length !== count) throw new Error('every junction needs a plan')
   return { device, scans, jvError: random.between(-0.008, 0.008) }
 }
 

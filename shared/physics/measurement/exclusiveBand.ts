@@ -13,16 +13,16 @@ export interface ForeignShare {
 
 const LEAST_RESPONSE = 0.4
 const LARGEST_THIRD_SHARE = 0.3
-const WINDOW = 5
+const WINDOW_NM = 40
 const FOURTH = 0.25
 
 /**
  * The share of junction `other` in `scan`, on the band where `other` alone responds. The own response of the junction
- * under test can only add to the ratio scan/other, so the band is where a window of five points has the lowest median
- * ratio, grown to both sides for as long as the ratio stays at that level.
+ * under test can only add to the ratio scan/other, so the band is where a window of three to five points (about 40 nm)
+ * has the lowest median ratio, grown to both sides for as long as the ratio stays at that level.
  * @param rest scans of the remaining junctions; where one of them reaches 0.3 of `other` the band ends.
  * @param subtract known foreign signal at a wavelength (second order), taken off first.
- * @returns null when fewer than five neighbouring points of the scan lie where `other` stands alone.
+ * @returns null when fewer neighbouring points than a window of the scan lie where `other` stands alone.
  * Cost: O(n).
  */
 export function foreignShare(
@@ -37,13 +37,15 @@ export function foreignShare(
   const runs = alone(scan, other, rest, peak)
   let best: { run: number[]; start: number; level: number } | null = null
   const ratios = new Map<number, number>()
+  const step = (scan.wavelengthNm.at(-1)! - scan.wavelengthNm[0]!) / (scan.wavelengthNm.length - 1)
+  const window = Math.max(3, Math.min(5, Math.round(WINDOW_NM / step)))
   for (const run of runs) {
     for (const i of run) {
       const nm = scan.wavelengthNm[i]!
       ratios.set(i, (scan.values[i]! - subtract(nm)) / valueAt(other, nm))
     }
-    for (let start = 0; start + WINDOW <= run.length; start++) {
-      const level = median(run.slice(start, start + WINDOW).map((i) => ratios.get(i)!))
+    for (let start = 0; start + window <= run.length; start++) {
+      const level = median(run.slice(start, start + window).map((i) => ratios.get(i)!))
       if (!best || level < best.level) best = { run, start, level }
     }
   }
@@ -55,7 +57,7 @@ export function foreignShare(
     return ratios.get(i)! <= level + spread + Math.min(0.005, FOURTH * Math.abs(level)) + 0.0005
   }
   let from = start
-  let to = start + WINDOW - 1
+  let to = start + window - 1
   while (from > 0 && isAtLevel(run[from - 1]!)) from--
   while (to + 1 < run.length && isAtLevel(run[to + 1]!)) to++
   const chosen = run.slice(from, to + 1)
