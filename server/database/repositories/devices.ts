@@ -27,6 +27,15 @@ export async function devicesById(work: Work, deviceIds: string[]): Promise<Devi
   return withStacks(work, await work.findBy(Device, { id: In(deviceIds), deletedAt: IsNull() }))
 }
 
+export async function devicesOfProjectById(
+  work: Work,
+  projectId: string,
+  deviceIds: string[],
+): Promise<DeviceWithStack[]> {
+  if (deviceIds.length === 0) return []
+  return withStacks(work, await work.findBy(Device, { id: In(deviceIds), projectId, deletedAt: IsNull() }))
+}
+
 /** The device and a lock on its row until the transaction ends; a deleted one too when `deletedSince` is given. */
 export async function lockedDevice(
   work: Work,

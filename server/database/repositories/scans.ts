@@ -49,6 +49,12 @@ export async function scansWithCurves(work: Work, scanIds: string[]): Promise<Sc
   return work.findBy(Scan, { id: In(scanIds) })
 }
 
+/** The scans in the order in which they were made, with their files and people. */
+export async function scansById(work: Work, scanIds: string[]): Promise<Scan[]> {
+  if (scanIds.length === 0) return []
+  return work.find(Scan, { where: { id: In(scanIds) }, relations: PEOPLE_AND_FILE, order: { id: 'ASC' } })
+}
+
 export interface ScanFilter {
   deviceId?: string | undefined
   /** Null: scans that are there; a time: scans that were deleted after it. */

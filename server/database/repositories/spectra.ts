@@ -1,3 +1,4 @@
+import { isDuplicateKey } from '../databaseErrors.js'
 import type { Work } from '../transaction.js'
 import { Spectrum } from '../entities/Spectrum.js'
 
@@ -37,11 +38,18 @@ export async function isSpectrumMadeOf(work: Work, sourceFileId: string): Promis
   return work.existsBy(Spectrum, { sourceFileId })
 }
 
-export async function insertSpectrum(
+/** False where the project has a spectrum of this name already; then nothing is added. */
+export async function addSpectrumOnce(
   work: Work,
   spectrum: Omit<Spectrum, 'project' | 'sourceFile' | 'uploadedBy'>,
-): Promise<void> {
-  await work.insert(Spectrum, spectrum)
+): Promise<boolean> {
+  try {
+    await work.insert(Spectrum, spectrum)
+    return true
+  } catch (error) {
+    if (isDuplicateKey(error)) return false
+    throw error
+  }
 }
 
 export async function removeSpectrum(work: Work, spectrumId: string): Promise<void> {

@@ -17,3 +17,8 @@ export async function presentSourceFiles(work: Work, files: readonly SourceFile[
     ),
   )
 }
+
+export async function presentOneSourceFile(work: Work, file: SourceFile): Promise<SourceFileReply> {
+  const [reply] = await presentSourceFiles(work, [file])
+  return reply!
+}
