@@ -55,11 +55,12 @@ export class BeerLambertModel implements OpticalModel {
     this.state = state
   }
 
-  fill(segment: number, ratio: Float64Array, absorptance: Float64Array): void {
+  fill(segment: number, ratio: Float64Array, absorptance: Float64Array, through: Float64Array): void {
     const optics = this.segments[segment]!
     ratio.fill(1)
     absorptance.set(optics.absorptance)
     for (let p = 0; p < optics.junction; p++) if (this.isChanged(p)) this.passThrough(optics, p, ratio, absorptance)
+    through.set(ratio)
     if (this.isChanged(optics.junction)) this.absorbOwn(optics, ratio, absorptance)
   }
 

@@ -17,6 +17,7 @@ import { stackRangeNm, TransferMatrixModel } from './transferMatrixModel.js'
 interface Buffers {
   readonly ratio: Float64Array
   readonly absorptance: Float64Array
+  readonly through: Float64Array
   readonly eqe: Float64Array
   readonly continued: Float64Array
 }
@@ -89,6 +90,7 @@ export class CompiledDevice {
     this.buffers = segments.map(({ wavelengthNm: { length } }) => ({
       ratio: new Float64Array(length),
       absorptance: new Float64Array(length),
+      through: new Float64Array(length),
       eqe: new Float64Array(length),
       continued: new Float64Array(length),
     }))
@@ -122,9 +124,9 @@ export class CompiledDevice {
 
   /** EQE' and its continued part of a segment for the state last begun with; overwritten by the next call. */
   solveSegment(s: number): { readonly eqe: Float64Array; readonly continued: Float64Array } {
-    const { ratio, absorptance, eqe, continued } = this.buffers[s]!
-    this.optics.fill(s, ratio, absorptance)
-    anchor(this.segments[s]!, this.bases[s]!, ratio, absorptance, eqe, continued)
+    const { ratio, absorptance, through, eqe, continued } = this.buffers[s]!
+    this.optics.fill(s, ratio, absorptance, through)
+    anchor(this.segments[s]!, this.bases[s]!, ratio, absorptance, through, eqe, continued)
     return this.buffers[s]!
   }
 

@@ -49,11 +49,12 @@ export class PartialModel implements OpticalModel {
     this.inner.begin(state)
   }
 
-  fill(segment: number, ratio: Float64Array, absorptance: Float64Array): void {
+  fill(segment: number, ratio: Float64Array, absorptance: Float64Array, through: Float64Array): void {
     const [low, high] = this.spans[segment]!
     ratio.fill(1)
     absorptance.fill(0)
-    this.inner.fill(segment, ratio.subarray(low, high), absorptance.subarray(low, high))
+    through.fill(1)
+    this.inner.fill(segment, ratio.subarray(low, high), absorptance.subarray(low, high), through.subarray(low, high))
   }
 
   private padded(segment: number, values: Float64Array): Float64Array {

@@ -20,9 +20,12 @@ export interface SegmentBase {
   readonly absorptance: Float64Array
   /** C = EQE/A, continued from the nearest well-defined value where A is too small; not below zero. */
   readonly collection: Float64Array
-  /** 1 where A is too small to divide by. */
+  /** SMALL where A is too small to divide by, OVERFULL where EQE is above A, so that the model absorbs too little. */
   readonly isWeak: Uint8Array
 }
+
+export const SMALL = 1
+export const OVERFULL = 2
 
 const BEYOND_NM = 300
 const BEYOND_STEP_NM = 5
@@ -53,7 +56,7 @@ export function makeSegments(eqe: readonly Curve[], spectrum: Curve, reachNm: re
 
 /**
  * Collection efficiency of a scan. A point is well defined when the junction absorbs at least `leastOwnShare` of the light
- * that reaches it and `leastAbsorptance` of all. Others take the last such value on the short-wave side, or the first one
+ * that reaches it and `leastAbsorptance` of all, and the EQE is not above the absorptance. Others take the last such value on the short-wave side, or the first one
  * on the long-wave side where there is none before.
  */
 export function anchorScan(
@@ -69,13 +72,13 @@ export function anchorScan(
   let first = -1
   let last = -1
   for (let i = 0; i < points; i++) {
-    const isDefined = ownShare[i]! >= leastOwnShare && absorptance[i]! >= leastAbsorptance
-    if (isDefined) {
+    const isSmall = !(ownShare[i]! >= leastOwnShare && absorptance[i]! >= leastAbsorptance)
+    if (!isSmall && segment.eqe[i]! <= absorptance[i]!) {
       collection[i] = Math.max(0, segment.eqe[i]! / absorptance[i]!)
       if (first < 0) first = i
       last = i
     } else {
-      isWeak[i] = 1
+      isWeak[i] = isSmall ? SMALL : OVERFULL
       if (last >= 0) collection[i] = collection[last]!
     }
   }
@@ -89,14 +92,15 @@ export function anchorBeyond(absorptance: Float64Array, scan: SegmentBase): Segm
   return {
     absorptance,
     collection: new Float64Array(absorptance.length).fill(last),
-    isWeak: new Uint8Array(absorptance.length).fill(1),
+    isWeak: new Uint8Array(absorptance.length).fill(SMALL),
   }
 }
 
 /**
  * EQE' of one segment: `EQE A'/A`, or, where A is too small to divide by and A' is larger, `EQE + C (A' − A)`, which joins
- * without a step and is EQE itself for A' = A.
- * @param ratio A'/A. @param absorptance A'. @param eqe and @param continued are filled: EQE' and the part of it that was
+ * without a step and is EQE itself for A' = A. Where the EQE is above A and the junction itself gains, it is the larger of
+ * `EQE t` and `C A'`, t the change of what arrives.
+ * @param ratio A'/A. @param absorptance A'. @param through t. @param eqe and @param continued are filled: EQE' and the part of it that was
  * continued.
  */
 export function anchor(
@@ -104,15 +108,20 @@ export function anchor(
   base: SegmentBase,
   ratio: Float64Array,
   absorptance: Float64Array,
+  through: Float64Array,
   eqe: Float64Array,
   continued: Float64Array,
 ): void {
   for (let i = 0; i < eqe.length; i++) {
-    const gained = base.isWeak[i] ? absorptance[i]! - base.absorptance[i]! : 0
+    const arriving = base.isWeak[i] === OVERFULL ? through[i]! : 1
+    const gained = base.isWeak[i] ? absorptance[i]! - base.absorptance[i]! * arriving : 0
     if (gained > 0) {
-      const part = base.collection[i]! * gained
+      const part =
+        base.isWeak[i] === OVERFULL
+          ? Math.max(0, base.collection[i]! * absorptance[i]! - segment.eqe[i]! * arriving)
+          : base.collection[i]! * gained
       continued[i] = part
-      eqe[i] = segment.eqe[i]! + part
+      eqe[i] = segment.eqe[i]! * arriving + part
     } else {
       continued[i] = 0
       eqe[i] = segment.eqe[i]! * ratio[i]!

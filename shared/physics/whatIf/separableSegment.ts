@@ -1,6 +1,7 @@
 import { dot, lowRankOf, project } from '../numerics/lowRank.js'
 import type { CompiledDevice } from './compiledDevice.js'
 import type { Change } from './device.js'
+import { OVERFULL } from './segment.js'
 import type { ResolvedAxis } from './mapAxis.js'
 import { measuredState, setIn, type DeviceState } from './parameters.js'
 
@@ -10,6 +11,7 @@ interface Factors {
   readonly stride: number
   readonly ratio: Float64Array
   readonly absorptance: Float64Array
+  readonly through: Float64Array
   /** Whether the segment's own junction belongs to this group. */
   readonly holdsOwn: boolean
   /** With `holdsOwn`: 1 for each value at which a segment beyond its scan counts. */
@@ -26,6 +28,10 @@ interface WeakPoints {
   readonly ratioY: Float64Array
   readonly absorptanceX: Float64Array
   readonly absorptanceY: Float64Array
+  /** Change of what arrives where the EQE is above A; one elsewhere. */
+  readonly isOverfull: Uint8Array
+  readonly throughX: Float64Array
+  readonly throughY: Float64Array
 }
 
 /** Error of a low-rank current, as a share of the longest row: a few roundings. */
@@ -108,8 +114,19 @@ export class SeparableSegment {
         ratioX[i * count + w]! *= weights[k]! * (eqe[k]! * fixed.ratio[k]!)
         absorptanceX[i * count + w]! *= fixed.absorptance[k]!
       }
+    const throughX = gather(fx.through, fx.stride, width, weak)
+    const throughY = gather(fy.through, fy.stride, height, weak)
+    weak.forEach((k, w) => {
+      const isOverfull = base.isWeak[k] === OVERFULL
+      for (let i = 0; i < width; i++)
+        throughX[i * count + w] = isOverfull ? throughX[i * count + w]! * fixed.through[k]! : 1
+      if (!isOverfull) for (let j = 0; j < height; j++) throughY[j * count + w] = 1
+    })
     this.weak = {
       count,
+      isOverfull: Uint8Array.from(weak, (k) => (base.isWeak[k] === OVERFULL ? 1 : 0)),
+      throughX,
+      throughY,
       measured: Float64Array.from(weak, (k) => weights[k]! * eqe[k]!),
       collection: Float64Array.from(weak, (k) => weights[k]! * base.collection[k]!),
       before: Float64Array.from(weak, (k) => base.absorptance[k]!),
@@ -140,11 +157,27 @@ export class SeparableSegment {
 }
 
 function weakCurrent(weak: WeakPoints, x: number, y: number): number {
-  const { count, measured, collection, before, ratioX, ratioY, absorptanceX, absorptanceY } = weak
+  const {
+    count,
+    measured,
+    collection,
+    before,
+    ratioX,
+    ratioY,
+    absorptanceX,
+    absorptanceY,
+    throughX,
+    throughY,
+    isOverfull,
+  } = weak
   let sum = 0
   for (let w = 0; w < count; w++) {
-    const gained = absorptanceX[x + w]! * absorptanceY[y + w]! - before[w]!
-    sum += gained > 0 ? measured[w]! + collection[w]! * gained : ratioX[x + w]! * ratioY[y + w]!
+    const arriving = throughX[x + w]! * throughY[y + w]!
+    const gained = absorptanceX[x + w]! * absorptanceY[y + w]! - before[w]! * arriving
+    if (!(gained > 0)) sum += ratioX[x + w]! * ratioY[y + w]!
+    else if (isOverfull[w])
+      sum += Math.max(measured[w]! * arriving, collection[w]! * absorptanceX[x + w]! * absorptanceY[y + w]!)
+    else sum += measured[w]! * arriving + collection[w]! * gained
   }
   return sum
 }
@@ -201,24 +234,25 @@ function axisFactors(compiled: CompiledDevice, s: number, change: Change, axis: 
   const owner = ownerOf(axis)
   if (owner > segment.junction) {
     const ones = new Float64Array(points).fill(1)
-    return { stride: 0, ratio: ones, absorptance: ones, counts: Uint8Array.of(0), holdsOwn: false }
+    return { stride: 0, ratio: ones, absorptance: ones, through: ones, counts: Uint8Array.of(0), holdsOwn: false }
   }
   const state = measuredState(compiled.device)
   copyJunction(state, compiled.state(change), owner)
   const size = axis.values.length * points
   const ratio = new Float64Array(size)
   const absorptance = new Float64Array(size)
+  const through = new Float64Array(size)
   const counts = new Uint8Array(axis.values.length)
   const holdsOwn = owner === segment.junction
   axis.values.forEach((value, v) => {
     setIn(compiled.device, state, axis.parameter, value, axis.key)
     compiled.optics.begin(state)
     const [from, to] = [v * points, (v + 1) * points]
-    compiled.optics.fill(s, ratio.subarray(from, to), absorptance.subarray(from, to))
+    compiled.optics.fill(s, ratio.subarray(from, to), absorptance.subarray(from, to), through.subarray(from, to))
     counts[v] = holdsOwn && compiled.counts(segment, state) ? 1 : 0
   })
   // A' itself stands in the group that holds the segment's own junction; in the others only what it is multiplied by.
-  return { stride: points, ratio, absorptance: holdsOwn ? absorptance : ratio, counts, holdsOwn }
+  return { stride: points, ratio, absorptance: holdsOwn ? absorptance : ratio, through, counts, holdsOwn }
 }
 
 /** Factors of the changes of all junctions that no axis belongs to. */
@@ -230,10 +264,11 @@ function fixedFactors(compiled: CompiledDevice, s: number, change: Change, owner
   for (let p = 0; p < state.thicknessNm.length; p++) if (!owners.includes(p)) copyJunction(state, changed, p)
   const ratio = new Float64Array(points)
   const absorptance = new Float64Array(points)
+  const through = new Float64Array(points)
   compiled.optics.begin(state)
-  compiled.optics.fill(s, ratio, absorptance)
+  compiled.optics.fill(s, ratio, absorptance, through)
   const holdsOwn = !owners.includes(segment.junction)
-  return { stride: 0, ratio, absorptance: holdsOwn ? absorptance : ratio, counts: Uint8Array.of(1), holdsOwn }
+  return { stride: 0, ratio, absorptance: holdsOwn ? absorptance : ratio, through, counts: Uint8Array.of(1), holdsOwn }
 }
 
 function copyJunction(to: DeviceState, from: DeviceState, p: number): void {

@@ -71,7 +71,8 @@ export class TransferMatrixModel implements OpticalModel {
     for (const grid of this.grids) grid.isSolved = false
   }
 
-  fill(segment: number, ratio: Float64Array, absorptance: Float64Array): void {
+  fill(segment: number, ratio: Float64Array, absorptance: Float64Array, through: Float64Array): void {
+    through.fill(1)
     const optics = this.solved(this.gridOf[segment]!)
     const before = this.base[segment]!.absorptance
     const junction = this.junctionOf[segment]!

@@ -40,7 +40,14 @@ describe.each(models)('anchoring, %s', (model) => {
   })
 
   it('lowering a gap and raising it again returns the curve where nothing was continued', () => {
-    const lowered = evaluate(compiled, { '1.gapShiftEv': -0.05 })
+    // Scans that stay below what either model absorbs.
+    const scans = eqe.map((c) =>
+      makeCurve(
+        c.wavelengthNm,
+        c.values.map((x) => 0.5 * x),
+      ),
+    )
+    const lowered = evaluate(compileDevice({ ...input, model, eqe: scans }), { '1.gapShiftEv': -0.05 })
     const [top, bottom] = device.junctions
     const again = compileDevice({
       ...input,
@@ -54,7 +61,7 @@ describe.each(models)('anchoring, %s', (model) => {
       back.junctions[p]!.eqe.values.forEach((value, i) => {
         if (lowered.junctions[p]!.continued[i]! > 0 || back.junctions[p]!.continued[i]! > 0) return
         compared++
-        expect(Math.abs(value - eqe[p]!.values[i]!)).toBeLessThan(1e-12)
+        expect(Math.abs(value - scans[p]!.values[i]!)).toBeLessThan(1e-12)
       })
     expect(compared).toBeGreaterThan(200)
     expect(lowered.junctions[0]!.continuedPartMaCm2).toBeGreaterThan(0)
@@ -101,6 +108,32 @@ describe('Beer–Lambert', () => {
     })
     expect(evaluate(short, { '2.thicknessNm': 1e5 }).currentsMaCm2[1]).toBeGreaterThan(1)
     expect(() => evaluate(short, { '1.thicknessNm': 560 })).toThrow(/junction 1 is known from 290 to 830 nm/)
+  })
+})
+
+describe('a scan that collects more than the model absorbs', () => {
+  const generous = compileDevice({
+    ...input,
+    eqe: eqe.map((c) =>
+      makeCurve(
+        c.wavelengthNm.map((nm) => nm + 12),
+        c.values,
+      ),
+    ),
+  })
+
+  it('does not run above one when its gap is lowered or its path lengthened', () => {
+    for (const change of [{ '1.bandGapEv': 1.6 }, { '2.pathFactor': 30 }] as Change[])
+      for (const { eqe: curve } of evaluate(generous, change).junctions)
+        expect(Math.max(...curve.values)).toBeLessThanOrEqual(1)
+  })
+
+  it('keeps the closed form of what passes through the junction above', () => {
+    const bottom = evaluate(generous, { '1.thicknessNm': 430 }).junctions[1]!
+    const alpha = absorptionPerCm(edge, bottom.eqe.wavelengthNm)
+    bottom.eqe.values.forEach((value, i) =>
+      expect(Math.abs(value - eqe[1]!.values[i]! * Math.exp(alpha[i]! * 70e-7))).toBeLessThan(1e-13),
+    )
   })
 })
 
