@@ -8,7 +8,10 @@ export type Work = EntityManager
 export interface Database {
   /** For reading, outside any transaction. */
   readonly work: Work
-  /** Runs all of `run` or nothing of it; a deadlock is tried again up to three times. */
+  /**
+   * Runs all of `run` or nothing of it; a deadlock is tried again up to three times. What is read after a lock was waited
+   * for is what the other transaction left (READ COMMITTED), not what stood there before.
+   */
   transaction<Result>(run: (work: Work) => Promise<Result>): Promise<Result>
 }
 
@@ -20,7 +23,7 @@ export function databaseOf(dataSource: DataSource): Database {
     async transaction(run) {
       for (let attempt = 1; ; attempt++) {
         try {
-          return await dataSource.transaction(run)
+          return await dataSource.transaction('READ COMMITTED', run)
         } catch (error) {
           if (attempt >= ATTEMPTS || !isRetriable(error)) throw error
         }

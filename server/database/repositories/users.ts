@@ -31,9 +31,12 @@ export function activeAdministrators(work: Work): Promise<User[]> {
   return work.find(User, { where: { isAdministrator: true, disabled: false }, lock: { mode: 'pessimistic_write' } })
 }
 
-/** Keeps others from adding people until the transaction ends. */
-export async function lockUsers(work: Work): Promise<void> {
-  await work.createQueryBuilder(User, 'user').select('user.id').setLock('pessimistic_write').getMany()
+/**
+ * One caller at a time, until the transaction ends. The table of people may be empty, and rows that are not there cannot
+ * be locked; those of the migrations always are.
+ */
+export async function lockInstallation(work: Work): Promise<void> {
+  await work.query('SELECT id FROM migrations FOR UPDATE')
 }
 
 /** By name; names may repeat, so the id decides. */

@@ -1,6 +1,6 @@
 import { v7 as uuid } from 'uuid'
 import { ApiError } from '../../../shared/contract/errors.js'
-import { addUser, lockUsers, numberOfUsers } from '../../database/repositories/users.js'
+import { addUser, lockInstallation, numberOfUsers } from '../../database/repositories/users.js'
 import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
@@ -14,7 +14,7 @@ export async function createFirstAdministrator(
 ): Promise<Actor> {
   const passwordHash = await hashPassword(input.password)
   return database.transaction(async (work) => {
-    await lockUsers(work)
+    await lockInstallation(work)
     if ((await numberOfUsers(work)) > 0)
       throw new ApiError(
         'STATE_CONFLICT',

@@ -53,7 +53,9 @@ export async function deleteProject(database: Database, actor: Actor, projectId:
 
 export async function restoreProject(database: Database, actor: Actor, projectId: string): Promise<ProjectReply> {
   return setDeletion(database, actor, projectId, { deleted: true }, ({ project }) => {
-    if (project.deletedAt && project.deletedAt <= restorableSince())
+    if (!project.deletedAt)
+      throw new ApiError('STATE_CONFLICT', { reason: 'not-deleted' }, 'The project is not deleted.')
+    if (project.deletedAt <= restorableSince())
       throw new ApiError('NOT_FOUND', { what: 'project' }, 'The project was deleted more than thirty days ago.')
     return null
   })
