@@ -1,5 +1,4 @@
 import type { ErrorRequestHandler, RequestHandler } from 'express'
-import multer from 'multer'
 import { randomUUID } from 'node:crypto'
 import type { Logger } from 'pino'
 import { ApiError, ERROR_TITLES, isApiError, type Problem } from '../../shared/contract/errors.js'
@@ -48,6 +47,7 @@ export function problems(log: Logger): ErrorRequestHandler {
   }
 }
 
+/** What the framework's own errors carry. */
 interface HttpError {
   type?: string
   status?: number
@@ -62,21 +62,21 @@ function translate(error: unknown): ApiError | null {
     })
   if (isDuplicateKey(error))
     return new ApiError('ALREADY_EXISTS', { what: 'entry', field: '', value: '' }, 'Such an entry exists already.')
-  if (error instanceof multer.MulterError) return multerProblem(error)
+  if (error instanceof URIError) return new ApiError('NOT_FOUND', { what: 'address' }, 'Nothing has this address.')
   const { type, status, limit } = (error ?? {}) as HttpError
+  const problem = type === undefined ? undefined : BODY_PROBLEMS[type]
+  if (problem) return new ApiError('BODY_MALFORMED', {}, problem)
   if (type === 'entity.too.large')
     return new ApiError('BODY_TOO_LARGE', { limitBytes: limit ?? 0 }, `The request is larger than ${limit ?? 0} bytes.`)
-  if (type === 'entity.parse.failed' || status === 400)
-    return new ApiError('BODY_MALFORMED', {}, 'The body of the request is not valid JSON.')
+  if (status === 400) return new ApiError('BODY_MALFORMED', {}, 'The request cannot be understood.')
   return null
 }
 
-function multerProblem(error: multer.MulterError): ApiError {
-  if (error.code === 'LIMIT_FILE_SIZE')
-    return new ApiError('BODY_TOO_LARGE', { limitBytes: 0 }, 'A file is larger than this installation takes.')
-  const message =
-    error.code === 'LIMIT_FILE_COUNT' || error.code === 'LIMIT_UNEXPECTED_FILE'
-      ? 'Send the files in parts named “files”, and not more at once than this installation takes.'
-      : `The upload cannot be used: ${error.message}.`
-  return new ApiError('INPUT_INVALID', { errors: [{ path: ['files'], message }] }, message)
+/** Sentences for what the body parser could not read, by its type of error. */
+const BODY_PROBLEMS: Record<string, string> = {
+  'entity.parse.failed': 'The body of the request is not valid JSON.',
+  'charset.unsupported': 'The body of the request is in an unknown character set. Send JSON in UTF-8.',
+  'encoding.unsupported': 'The body of the request is compressed in an unknown way. Send plain JSON.',
+  'request.size.invalid': 'The body of the request is shorter or longer than its header says.',
+  'request.aborted': 'The request broke off before its body was complete.',
 }
