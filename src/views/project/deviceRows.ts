@@ -19,7 +19,7 @@ export interface DeviceRow {
 }
 
 export const TRUST_WORDS: Record<Trust, string> = {
-  reject: 'do not use',
+  reject: 'reject',
   caution: 'caution',
   note: 'note',
   none: 'no findings',

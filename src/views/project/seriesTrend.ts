@@ -7,6 +7,8 @@ export interface SeriesTrend {
   label: string
   unit: string
   lines: LineSeries[]
+  /** A little wider than what was varied. */
+  range: [number, number]
   /** From a little below the smallest current to a little above the largest, mA/cm². */
   domain: [number, number]
 }
@@ -67,11 +69,15 @@ export function trendOf(summaries: readonly DeviceSummary[]): SeriesTrend | null
   const currents = drawn.flatMap((line) => Array.from(line.y))
   if (currents.length === 0) return null
   const [low, high] = [Math.min(...currents), Math.max(...currents)]
+  const varied = drawn.flatMap((line) => Array.from(line.x))
+  const [from, to] = [Math.min(...varied), Math.max(...varied)]
+  const aside = 0.03 * (to - from)
   const margin = Math.max(0.15 * (high - low), 0.05)
   return {
     label: parameter.label,
     unit: parameter.unit,
     lines: drawn,
+    range: [from - aside, to + aside],
     domain: [Math.max(0, low - margin), high + margin],
   }
 }

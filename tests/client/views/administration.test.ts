@@ -123,8 +123,16 @@ describe('activity of a project', () => {
   })
 
   test('what happened to a device leads there', async () => {
-    server.on(listActivity, () => page([happened(2, { subject: { kind: 'device', id: idOf(200), name: 'T-01' } })]))
+    server.on(listActivity, () =>
+      page([
+        happened(2, {
+          sentence: 'Ines Okafor saved T-01.',
+          subject: { kind: 'device', id: idOf(200), name: 'T-01' },
+        }),
+      ]),
+    )
     const { screen } = await openScreen(`/projects/${idOf(100)}/activity`)
+    expect(screen.find('ol a').text()).toBe('T-01')
     expect(screen.find('ol a').attributes('href')).toBe(`/projects/${idOf(100)}/devices/${idOf(200)}`)
   })
 

@@ -107,14 +107,14 @@ describe('the form of a device', () => {
     )
     const { screen } = await openScreen(address)
     await press('Add a device')
-    await type('Nominal gap', 'wide')
+    await type('Nominal gap (eV)', 'wide')
     await press('Add device')
     await submit(screen, '.v-dialog form')
     expect(shownText()).toContain('A name is needed.')
     expect(shownText()).toContain('This is not a number. Write it like 1.68.')
     expect(server.requestsOf(createDevice)).toHaveLength(0)
     await type('Name', 'T-03')
-    await type('Nominal gap', '1,68')
+    await type('Nominal gap (eV)', '1,68')
     await submit(screen, '.v-dialog form')
     expect(server.requestsOf(createDevice)[0]?.body).toMatchObject({
       name: 'T-03',
