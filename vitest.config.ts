@@ -1,11 +1,12 @@
 import vue from '@vitejs/plugin-vue'
 import { defineConfig } from 'vitest/config'
 
-/** Four layers of tests; each can be run alone with `npx vitest --project NAME`. */
+/** The layers of tests; each can be run alone with `npx vitest --project NAME`. */
 export default defineConfig({
   test: {
     projects: [
       { test: { name: 'engine', environment: 'node', include: ['tests/engine/**/*.test.ts'] } },
+      { test: { name: 'reading', environment: 'node', include: ['tests/reading/**/*.test.ts'], testTimeout: 30_000 } },
       { test: { name: 'cli', environment: 'node', include: ['tests/cli/**/*.test.ts'], testTimeout: 30_000 } },
       {
         test: {

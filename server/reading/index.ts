@@ -1,0 +1,6 @@
+export { READING_LIMITS } from './limits.js'
+export { fromPlainError, READING_ERROR_CODES, ReadingError, toPlainError } from './readingError.js'
+export type { PlainReadingError, ReadingErrorCode, ReadingErrorDetails } from './readingError.js'
+export * from './readingResult.js'
+export { readMeasurementFile, shapeOf } from './readMeasurementFile.js'
+export { closeReadingWorkers, readInWorker } from './readInWorker.js'
