@@ -46,6 +46,8 @@ export interface Application {
   people: Record<PersonName, TestPerson>
   /** Calls as somebody who is signed in already (or as nobody). */
   as(who: CallerName): Caller
+  /** Lets another browser stand for somebody, after the first was signed out. */
+  renew(who: CallerName, browser: Caller): void
   /** A new browser, signed in with address and password; without them, signed out. */
   open(email?: string, password?: string): Promise<Caller>
   /** Another project with the same members in the same roles. */
@@ -94,6 +96,7 @@ export async function startApplication(settings: Record<string, string> = {}): P
     project,
     people,
     as: (who) => browsers[who],
+    renew: (who, browser) => void (browsers[who] = browser),
     open: first.open,
     addProject,
     addPerson: async (name, roles) => {
