@@ -1,0 +1,151 @@
+import { readFile } from 'node:fs/promises'
+import { isAbsolute, join } from 'node:path'
+import type { ReadingMapping, ValueUnit, WavelengthUnit } from '../shared/contract/scans.js'
+import { makeCurve, type Curve } from '../shared/physics/curve.js'
+import { readMeasurementFile } from '../server/reading/readMeasurementFile.js'
+import { ReadingError } from '../server/reading/readingError.js'
+import type { FoundColumn, FoundTable, ReadScan, ReadingResult } from '../server/reading/readingResult.js'
+import { CommandError } from './commandError.js'
+import type { ScanReference } from './deviceFile.js'
+
+type Wanted = 'eqe' | 'reflectance' | 'irradiance'
+
+const WAVELENGTH_UNITS: Record<string, WavelengthUnit> = {
+  nm: 'nm',
+  um: 'um',
+  µm: 'um',
+  μm: 'um',
+  angstrom: 'angstrom',
+  å: 'angstrom',
+  ev: 'eV',
+}
+const VALUE_UNITS: Record<string, ValueUnit> = {
+  '%': 'percent',
+  percent: 'percent',
+  fraction: 'fraction',
+  '1': 'fraction',
+  'a/w': 'A/W',
+}
+
+/** The curve of one quantity in a file. @throws CommandError: one sentence with file, line and reason. */
+export async function readScan(
+  folder: string,
+  reference: ScanReference,
+  wanted: Wanted,
+  junctionName: string,
+): Promise<Curve> {
+  const path = isAbsolute(reference.file) ? reference.file : join(folder, reference.file)
+  const bytes = await readFile(path).catch((error: NodeJS.ErrnoException) => {
+    throw new CommandError(
+      error.code === 'ENOENT'
+        ? `${path}: there is no such file.`
+        : `${path} cannot be opened (${error.code ?? error.message}).`,
+    )
+  })
+  try {
+    const result = readAsAsked(path, bytes, reference, wanted)
+    const scan = chooseScan(path, result.scans, wanted, junctionName)
+    return makeCurve(scan.wavelengthNm, scan.values)
+  } catch (error) {
+    if (!(error instanceof ReadingError)) throw error
+    const { line } = error.details
+    throw new CommandError(`${path}${line === undefined ? '' : `, line ${line}`}: ${error.message}`)
+  }
+}
+
+function readAsAsked(path: string, bytes: Uint8Array, reference: ScanReference, wanted: Wanted): ReadingResult {
+  const { sheet, columns, units } = reference
+  const valueColumn = wanted === 'irradiance' ? undefined : columns[wanted]
+  const valueUnit = wanted === 'irradiance' ? undefined : units[wanted]
+  const asked = [sheet, columns.wavelength, valueColumn, units.wavelength, valueUnit].some((one) => one !== undefined)
+  if (!asked) return readMeasurementFile(bytes, path)
+
+  const { tables, mapping } = proposal(bytes, path)
+  const table = tables.find((one) =>
+    sheet === undefined ? one.tableIndex === (mapping?.tableIndex ?? 0) : one.sheet === sheet,
+  )
+  if (!table) {
+    const names = [...new Set(tables.map((one) => one.sheet).filter(Boolean))].join(', ')
+    throw new CommandError(`${path} has no sheet "${sheet}"${names ? `; it has ${names}` : ''}.`)
+  }
+  const wavelength =
+    columns.wavelength === undefined
+      ? table.columns.find((one) => one.role === 'wavelength')
+      : columnOf(path, table, columns.wavelength)
+  if (!wavelength)
+    throw new CommandError(`${path}: say which column holds the wavelengths with "columns": {"wavelength": …}.`)
+  const valueColumns =
+    valueColumn === undefined
+      ? table.columns.filter(
+          (one) => one !== wavelength && (one.role === wanted || (wanted === 'eqe' && one.role === 'responsivity')),
+        )
+      : [columnOf(path, table, valueColumn)]
+  if (valueColumns.length === 0)
+    throw new CommandError(
+      `${path}: say which column holds the ${wanted === 'eqe' ? 'EQE' : wanted} with "columns": {"${wanted}": …}.`,
+    )
+  const proposedUnit = (column: number) => mapping?.series.find((one) => one.column === column)?.unit
+  const asMapping: ReadingMapping = {
+    sheet: table.sheet,
+    tableIndex: table.tableIndex,
+    wavelength: {
+      column: wavelength.index,
+      unit:
+        units.wavelength === undefined
+          ? (mapping?.wavelength.unit ?? 'nm')
+          : unitOf(path, units.wavelength, WAVELENGTH_UNITS),
+    },
+    series: valueColumns.map((column) => ({
+      column: column.index,
+      quantity: wanted,
+      unit: valueUnit === undefined ? (proposedUnit(column.index) ?? 'fraction') : unitOf(path, valueUnit, VALUE_UNITS),
+      label: column.header,
+    })),
+  }
+  return readMeasurementFile(bytes, path, { mapping: asMapping })
+}
+
+/** The tables of a file even where no mapping could be proposed. */
+function proposal(bytes: Uint8Array, path: string): { tables: FoundTable[]; mapping: ReadingMapping | null } {
+  try {
+    return readMeasurementFile(bytes, path)
+  } catch (error) {
+    if (error instanceof ReadingError && error.details.tables) return { tables: error.details.tables, mapping: null }
+    throw error
+  }
+}
+
+/** A column by its header, whatever its case, or by its number from 1. */
+function columnOf(path: string, table: FoundTable, wanted: string | number): FoundColumn {
+  const column =
+    typeof wanted === 'number'
+      ? table.columns.find((one) => one.index === wanted - 1)
+      : table.columns.find((one) => one.header.trim().toLowerCase() === wanted.trim().toLowerCase())
+  if (!column)
+    throw new CommandError(
+      `${path} has no column ${typeof wanted === 'number' ? wanted : `"${wanted}"`}; it has ${table.columns.map((one) => `"${one.header}"`).join(', ')}.`,
+    )
+  return column
+}
+
+function unitOf<Unit>(path: string, text: string, units: Record<string, Unit>): Unit {
+  const unit = units[text.trim().toLowerCase()]
+  if (unit === undefined)
+    throw new CommandError(`${path}: "${text}" is no unit known here; there are ${Object.keys(units).join(', ')}.`)
+  return unit
+}
+
+function chooseScan(path: string, scans: readonly ReadScan[], wanted: Wanted, junctionName: string): ReadScan {
+  const fitting = scans.filter((scan) => scan.quantity === wanted)
+  const named = fitting.filter((scan) => scan.label.toLowerCase().includes(junctionName.toLowerCase()))
+  if (fitting.length === 1) return fitting[0]!
+  if (named.length === 1) return named[0]!
+  const what = { eqe: 'EQE', reflectance: 'reflectance', irradiance: 'irradiance' }[wanted]
+  if (fitting.length === 0)
+    throw new CommandError(
+      `${path} holds no ${what}; it holds ${scans.map((scan) => `${scan.quantity} "${scan.label}"`).join(', ') || 'nothing that was understood'}.`,
+    )
+  throw new CommandError(
+    `${path} holds ${fitting.length} columns of ${what} (${fitting.map((scan) => `"${scan.label}"`).join(', ')}); say which with "columns": {"${wanted}": …}.`,
+  )
+}
