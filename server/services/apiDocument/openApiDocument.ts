@@ -5,6 +5,7 @@ import type { Access, Route } from '../../../shared/contract/route.js'
 import { ROUTES } from '../../../shared/contract/routes.js'
 
 type JsonSchema = Record<string, unknown>
+type Content = Record<string, { schema: JsonSchema }>
 export interface Parameter {
   name: string
   in: 'path' | 'query'
@@ -18,8 +19,8 @@ export interface Operation {
   summary: string
   description: string
   parameters: Parameter[]
-  requestBody?: { required: true; content: Record<string, { schema: JsonSchema }> }
-  responses: Record<string, { description: string; content?: Record<string, { schema: JsonSchema }> }>
+  requestBody?: { required: true; content: Content }
+  responses: Record<string, { description: string; content?: Content }>
   security: Record<string, string[]>[]
 }
 export interface ApiDocument {
@@ -57,7 +58,7 @@ export function openApiDocument(version: string, routes: readonly Route[] = ROUT
 
 function operationOf(route: Route, components: Components, problem: JsonSchema): Operation {
   const body = requestBodyOf(route, components)
-  const reply =
+  const reply: Content =
     route.transfer === 'bytes'
       ? { 'application/octet-stream': { schema: { type: 'string', format: 'binary' } } }
       : { 'application/json': { schema: components.replySchema(route.reply) } }
