@@ -7,6 +7,8 @@ import { matchingRouter } from './matching.js'
 import { peopleRouter } from './people.js'
 import { projectsRouter } from './projects.js'
 import { scansRouter } from './scans.js'
+import { sourceFilesRouter } from './sourceFiles.js'
+import { spectraRouter } from './spectra.js'
 
 /** Every router. A new resource is one file and one line here. */
 export const ROUTERS: readonly MakeRouter[] = [
@@ -16,6 +18,8 @@ export const ROUTERS: readonly MakeRouter[] = [
   devicesRouter,
   matchingRouter,
   scansRouter,
+  sourceFilesRouter,
+  spectraRouter,
   administrationRouter,
   apiDocumentRouter,
 ]
