@@ -37,11 +37,11 @@ class HeldRequest {
   sent(loaded: number, total: number): void {
     this.upload.onprogress?.({ lengthComputable: true, loaded, total })
   }
-  answer(status: number, body: unknown): Promise<void> {
+  async answer(status: number, body: unknown): Promise<void> {
     this.status = status
     this.responseText = JSON.stringify(body)
     this.onload?.()
-    return flushPromises()
+    await flushPromises()
   }
 }
 
