@@ -21,10 +21,12 @@ async function main(): Promise<void> {
   const clientFolder = join(dirname(fileURLToPath(import.meta.url)), '../client')
   const server = createServer(buildApp({ config, database, log, clientFolder }))
   const background = startBackgroundWork({ config, database, log })
-  server.listen(config.port, config.host, () => {
-    log.info(`Tierlight answers at ${config.publicUrl}`)
-    process.send?.({ ready: true, url: config.publicUrl })
+  await new Promise<void>((resolve, reject) => {
+    server.once('error', reject)
+    server.listen(config.port, config.host, resolve)
   })
+  log.info(`Tierlight answers at ${config.publicUrl}`)
+  process.send?.({ ready: true, url: config.publicUrl })
 
   let stopping = false
   const stop = async (): Promise<void> => {
@@ -39,6 +41,8 @@ async function main(): Promise<void> {
   }
   process.on('SIGTERM', () => void stop())
   process.on('SIGINT', () => void stop())
+  // Whoever started this process is gone, perhaps killed.
+  process.on('disconnect', () => void stop())
 }
 
 main().catch((error: unknown) => {

@@ -1,6 +1,6 @@
 import { execFileSync, spawn } from 'node:child_process'
 import { randomBytes } from 'node:crypto'
-import { chownSync, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
+import { chownSync, existsSync, mkdirSync, readFileSync, readdirSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { userInfo } from 'node:os'
 import { join } from 'node:path'
@@ -17,7 +17,8 @@ const APPLICATION_USER = 'tierlight'
 const START_TIMEOUT_MS = 60_000
 
 /**
- * Starts the server called `name`, or takes over one that still runs from before.
+ * Starts the server called `name`, or takes over one that still runs: left behind by a killed start, or used by another
+ * process of the project at this moment. It is stopped by the last of those who use it.
  * @returns where it is, its URL for a database of the given name, and how to stop it.
  */
 export async function startMariadb(name, database = 'tierlight') {
@@ -28,10 +29,13 @@ export async function startMariadb(name, database = 'tierlight') {
     pid: join(folder, 'mariadb.pid'),
     log: join(folder, 'mariadb.log'),
     secret: join(folder, 'connection.json'),
+    users: join(folder, 'users'),
   }
   mkdirSync(folder, { recursive: true, mode: 0o755 })
   if (!existsSync(join(dataFolder, 'mysql'))) install(folder, dataFolder)
-  if (isRoot) giveToServer(folder)
+  if (isRoot) giveToServer(folder, dataFolder)
+  mkdirSync(files.users, { recursive: true })
+  writeFileSync(join(files.users, String(process.pid)), '')
 
   const running = runningProcess(files.pid)
   const known = existsSync(files.secret) ? JSON.parse(readFileSync(files.secret, 'utf8')) : null
@@ -93,34 +97,48 @@ function handle(files, secret, pid, database) {
     urlOf,
     createDatabase: (name) => sql(files.socket, `CREATE DATABASE IF NOT EXISTS \`${name}\``),
     dropDatabase: (name) => sql(files.socket, `DROP DATABASE IF EXISTS \`${name}\``),
-    stop: () => stopProcess(pid),
+    stop: () => (isUsedByOthers(files.users) ? Promise.resolve() : stopProcess(pid)),
   }
 }
 
+/** Whether another living process uses the server as well; this one no longer does. */
+function isUsedByOthers(usersFolder) {
+  rmSync(join(usersFolder, String(process.pid)), { force: true })
+  const living = readdirSync(usersFolder).filter((pid) => {
+    if (lives(Number(pid))) return true
+    rmSync(join(usersFolder, pid), { force: true })
+    return false
+  })
+  return living.length > 0
+}
+
+/** Makes the data folder whole or not at all: it is moved to its place when it is complete. */
 function install(folder, dataFolder) {
+  const unfinished = `${dataFolder}.unfinished`
   rmSync(dataFolder, { recursive: true, force: true })
-  mkdirSync(dataFolder, { recursive: true })
-  if (isRoot) giveToServer(folder)
+  rmSync(unfinished, { recursive: true, force: true })
+  mkdirSync(unfinished, { recursive: true })
+  if (isRoot) giveToServer(folder, unfinished)
   execFileSync(
     'mariadb-install-db',
     [
       '--no-defaults',
       ...asServerUser,
-      `--datadir=${dataFolder}`,
+      `--datadir=${unfinished}`,
       '--auth-root-authentication-method=socket',
       `--auth-root-socket-user=${userInfo().username}`,
       '--skip-test-db',
     ],
     { stdio: ['ignore', 'ignore', 'pipe'] },
   )
+  renameSync(unfinished, dataFolder)
 }
 
 /** The user mysql has to own its folders when root starts the server. */
-function giveToServer(folder) {
+function giveToServer(...folders) {
   const uid = Number(execFileSync('id', ['-u', 'mysql'], { encoding: 'utf8' }))
   const gid = Number(execFileSync('id', ['-g', 'mysql'], { encoding: 'utf8' }))
-  chownSync(folder, uid, gid)
-  chownSync(join(folder, 'data'), uid, gid)
+  for (const folder of folders) chownSync(folder, uid, gid)
 }
 
 function sql(socket, statements) {
@@ -140,15 +158,23 @@ function answers(socket) {
   }
 }
 
-/** Process number in the pid file, if that process lives; two servers on one data folder would hang. */
+/** Process number in the pid file, if it is still this server's; two servers on one data folder would hang. */
 function runningProcess(pidFile) {
   if (!existsSync(pidFile)) return null
   const pid = Number(readFileSync(pidFile, 'utf8'))
   try {
-    process.kill(pid, 0)
-    return readFileSync(`/proc/${pid}/cmdline`, 'utf8').includes('mariadbd') ? pid : null
+    return readFileSync(`/proc/${pid}/cmdline`, 'utf8').includes(`--pid-file=${pidFile}\0`) ? pid : null
   } catch {
     return null
+  }
+}
+
+export function lives(pid) {
+  try {
+    process.kill(pid, 0)
+    return true
+  } catch (error) {
+    return error.code === 'EPERM'
   }
 }
 
@@ -158,14 +184,7 @@ async function stopProcess(pid) {
   } catch {
     return
   }
-  for (let i = 0; i < 200; i++) {
-    try {
-      process.kill(pid, 0)
-    } catch {
-      return
-    }
-    await wait(100)
-  }
+  for (let i = 0; i < 200 && lives(pid); i++) await wait(100)
 }
 
 /** A free port; the one used before when it still is. */

@@ -1,6 +1,6 @@
 import { existsSync, readdirSync, readFileSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
-import { startMariadb, stopLeftBehind } from './mariadb.mjs'
+import { lives, startMariadb, stopLeftBehind } from './mariadb.mjs'
 import { databaseFolder, PRIVATE_FOLDER } from './paths.mjs'
 
 const PREFIX = 'throwaway-'
@@ -40,13 +40,4 @@ function remove(name) {
   const folder = existsSync(pointer) ? readFileSync(pointer, 'utf8').trim() : databaseFolder(name)
   rmSync(folder, { recursive: true, force: true })
   rmSync(pointer, { force: true })
-}
-
-function lives(pid) {
-  try {
-    process.kill(pid, 0)
-    return true
-  } catch (error) {
-    return error.code === 'EPERM'
-  }
 }
