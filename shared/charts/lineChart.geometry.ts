@@ -246,7 +246,7 @@ function overlaps(a: NonNullable<DrawnSeries['label']>, b: NonNullable<DrawnSeri
 
 function ticksOf(scale: ScaleLinear<number, number>, count: number): Tick[] {
   const format = scale.tickFormat(count)
-  return scale.ticks(count).map((value) => ({ at: round(scale(value)), text: format(value) }))
+  return scale.ticks(count).map((value) => ({ at: round(scale(value)), text: format(value).replaceAll(',', '') }))
 }
 
 function extentOf(series: readonly LineSeries[], key: 'x' | 'y', fromZero: boolean): [number, number] {
