@@ -12,9 +12,14 @@ export interface NamedCurve {
   curve: CurveData
 }
 
-export function suggestJunctions(curves: readonly NamedCurve[], device: Device): Map<string, string> {
+export function suggestJunctions(
+  curves: readonly NamedCurve[],
+  device: Device,
+  /** Junctions that other curves of this upload were given already. */
+  taken: ReadonlySet<string> = new Set(),
+): Map<string, string> {
   const suggestion = new Map<string, string>()
-  const free = new Set(device.junctions.map((junction) => junction.id))
+  const free = new Set(device.junctions.map((junction) => junction.id).filter((id) => !taken.has(id)))
   for (const curve of curves) {
     const named = device.junctions.filter((junction) => namesJunction(curve.name, junction.label, junction.position))
     if (named.length !== 1) continue

@@ -26,26 +26,35 @@ export function draftOf(reading: FileReading): FileDraft {
 
 /** Puts every EQE column without a target where it most likely belongs on `device`; reflectance goes to the device. */
 export function withSuggestedTargets(drafts: readonly FileDraft[], device: Device): FileDraft[] {
+  const taken = new Set(
+    drafts.flatMap((draft) => Object.values(draft.targets).map((target) => target.junctionId ?? '')),
+  )
   const curves = drafts.flatMap((draft, f) =>
     draft.reading.series
-      .filter((series) => series.quantity === 'eqe' && !draft.targets[series.column])
+      .filter((series) => series.quantity === 'eqe' && isOpen(draft, series.column, device))
       .map((series) => ({
         key: `${f}:${series.column}`,
         name: `${draft.reading.file.name} ${series.label}`,
         curve: series.curve,
       })),
   )
-  const suggested = suggestJunctions(curves, device)
+  const suggested = suggestJunctions(curves, device, taken)
   return drafts.map((draft, f) => {
     const targets = { ...draft.targets }
     for (const series of draft.reading.series) {
-      if (targets[series.column]) continue
+      if (!isOpen(draft, series.column, device)) continue
       if (series.quantity === 'reflectance') targets[series.column] = { deviceId: device.id, junctionId: null }
       if (series.quantity === 'eqe')
         targets[series.column] = { deviceId: device.id, junctionId: suggested.get(`${f}:${series.column}`) ?? null }
     }
     return { ...draft, targets }
   })
+}
+
+/** Whether nobody has said yet where a column belongs; one given to another device is left alone. */
+function isOpen(draft: FileDraft, column: number, device: Device): boolean {
+  const target = draft.targets[column]
+  return !target || (target.junctionId === null && target.deviceId === device.id)
 }
 
 /** What still keeps a file from being confirmed, as a sentence; null when it is ready. */

@@ -42,6 +42,10 @@ describe('suggestJunctions', () => {
     expect(suggestJunctions([{ key: '1', name: 'scan', curve: blue }], device).get('1')).toBe('t')
   })
 
+  it('gives the one curve left to the one junction left', () => {
+    expect(suggestJunctions([{ key: '1', name: 'bot', curve: red }], device, new Set(['t'])).get('1')).toBe('b')
+  })
+
   it('suggests nothing for a single curve when gaps are unknown', () => {
     const unknown = { junctions: [junction('t', 1, 'A', null), junction('b', 2, 'B', null)] } as Device
     expect(suggestJunctions([{ key: '1', name: 'scan', curve: red }], unknown).size).toBe(0)
