@@ -58,12 +58,16 @@ function readAsAsked(path: string, bytes: Uint8Array, reference: ScanReference, 
   const valueColumn = wanted === 'irradiance' ? undefined : columns[wanted]
   const valueUnit = wanted === 'irradiance' ? undefined : units[wanted]
   const asked = [sheet, columns.wavelength, valueColumn, units.wavelength, valueUnit].some((one) => one !== undefined)
-  if (!asked) return readMeasurementFile(bytes, path)
+  if (!asked) return single(path, readMeasurementFile(bytes, path, { expected: wanted }))
 
-  const { tables, mapping } = proposal(bytes, path)
-  const table = tables.find((one) =>
-    sheet === undefined ? one.tableIndex === (mapping?.tableIndex ?? 0) : one.sheet === sheet,
-  )
+  const { tables, mapping } = proposal(bytes, path, wanted)
+  const ofSheet = tables.filter((one) => sheet === undefined || one.sheet === sheet)
+  const named = columns.wavelength ?? valueColumn
+  const table =
+    ofSheet.find((one) => valueColumn !== undefined && findColumn(one, valueColumn)) ??
+    ofSheet.find((one) => named !== undefined && findColumn(one, named)) ??
+    ofSheet.find((one) => one.tableIndex === mapping?.tableIndex) ??
+    ofSheet[0]
   if (!table) {
     const names = [...new Set(tables.map((one) => one.sheet).filter(Boolean))].join(', ')
     throw new CommandError(`${path} has no sheet "${sheet}"${names ? `; it has ${names}` : ''}.`)
@@ -102,13 +106,28 @@ function readAsAsked(path: string, bytes: Uint8Array, reference: ScanReference, 
       label: column.header,
     })),
   }
-  return readMeasurementFile(bytes, path, { mapping: asMapping })
+  return single(path, readMeasurementFile(bytes, path, { mapping: asMapping }))
+}
+
+/** Without a screen to choose on, a file with several scans one after the other is not guessed at. */
+function single(path: string, result: ReadingResult): ReadingResult {
+  const [next] = result.appendedTables
+  if (next === undefined) return result
+  const line = result.tables[next]!.firstLine
+  throw new CommandError(
+    `${path}, line ${line}: the wavelengths begin again, so the file holds ${result.appendedTables.length + 1} scans ` +
+      'one after the other; keep one scan in a file.',
+  )
 }
 
 /** The tables of a file even where no mapping could be proposed. */
-function proposal(bytes: Uint8Array, path: string): { tables: FoundTable[]; mapping: ReadingMapping | null } {
+function proposal(
+  bytes: Uint8Array,
+  path: string,
+  wanted: Wanted,
+): { tables: FoundTable[]; mapping: ReadingMapping | null } {
   try {
-    return readMeasurementFile(bytes, path)
+    return readMeasurementFile(bytes, path, { expected: wanted })
   } catch (error) {
     if (error instanceof ReadingError && error.details.tables) return { tables: error.details.tables, mapping: null }
     throw error
@@ -117,16 +136,18 @@ function proposal(bytes: Uint8Array, path: string): { tables: FoundTable[]; mapp
 
 /** A column by its header, whatever its case, or by its number from 1. */
 function columnOf(path: string, table: FoundTable, wanted: string | number): FoundColumn {
-  const column =
-    typeof wanted === 'number'
-      ? table.columns.find((one) => one.index === wanted - 1)
-      : table.columns.find((one) => one.header.trim().toLowerCase() === wanted.trim().toLowerCase())
+  const column = findColumn(table, wanted)
   if (!column)
     throw new CommandError(
       `${path} has no column ${typeof wanted === 'number' ? wanted : `"${wanted}"`}; it has ${table.columns.map((one) => `"${one.header}"`).join(', ')}.`,
     )
   return column
 }
+
+const findColumn = (table: FoundTable, wanted: string | number): FoundColumn | undefined =>
+  typeof wanted === 'number'
+    ? table.columns.find((one) => one.index === wanted - 1)
+    : table.columns.find((one) => one.header.trim().toLowerCase() === wanted.trim().toLowerCase())
 
 function unitOf<Unit>(path: string, text: string, units: Record<string, Unit>): Unit {
   const unit = units[text.trim().toLowerCase()]

@@ -3,13 +3,14 @@ import type { ReadingMapping } from '../../shared/contract/scans.js'
 import { applyMapping } from './applyMapping.js'
 import { decodeText } from './decodeText.js'
 import { delimitedTable } from './delimitedTable.js'
+import { doubtsAbout } from './doubts.js'
 import { isZip } from './fileKind.js'
 import { findTables, foundTable, type WorkingTable } from './foundTables.js'
 import { READING_LIMITS } from './limits.js'
 import { proposeMapping } from './proposeMapping.js'
 import type { RawGrid } from './rawGrid.js'
 import { ReadingError } from './readingError.js'
-import type { FoundTable, ReadingOptions, ReadingResult } from './readingResult.js'
+import type { ReadingOptions, ReadingResult } from './readingResult.js'
 import { workbookTable } from './workbookTable.js'
 
 const PREVIEW_ROWS = 40
@@ -23,7 +24,7 @@ export function readMeasurementFile(bytes: Uint8Array, fileName: string, options
   const { kind, grids, notes } = gridsOf(bytes, fileName)
   const tables = findTables(grids, { fileName, expected: options.expected ?? null })
   const found = tables.map((table) => foundTable(table, options.previewRows ?? PREVIEW_ROWS))
-  const shape = shapeOfTables(grids, found)
+  const shape = shapeOfTables(grids, tables)
   try {
     const {
       mapping,
@@ -40,7 +41,7 @@ export function readMeasurementFile(bytes: Uint8Array, fileName: string, options
       tables: found,
       mapping,
       mappingOrigin: options.mapping ? 'given' : 'proposed',
-      notes: [...notes, ...decided, ...further, ...notesOnTables(tables, table, appendedTables)],
+      notes: [...notes, ...decided, ...further, ...doubtsAbout(scans), ...notesOnTables(tables, table, appendedTables)],
       scans,
       appendedTables,
       shape,
@@ -107,10 +108,21 @@ function notesOnTables(tables: WorkingTable[], used: WorkingTable, appended: num
   ]
 }
 
-function shapeOfTables(grids: readonly RawGrid[], tables: readonly FoundTable[]): string {
+/**
+ * Where a header states no unit, the size of the numbers belongs to the shape: files in percent and in fractions under
+ * the same headers must not share a mapping.
+ */
+function shapeOfTables(grids: readonly RawGrid[], tables: readonly WorkingTable[]): string {
   const shape = [
     grids.map((grid) => grid.separator),
-    tables.map((table) => table.columns.map((column) => [column.index, column.header])),
+    tables.map((table) =>
+      table.columns.map(({ index, header, role, unit, numbers }) => [
+        index,
+        header,
+        unit,
+        role !== 'ignored' && unit === null && numbers.some((value) => value !== null && value > 1.5),
+      ]),
+    ),
   ]
   return createHash('sha256').update(JSON.stringify(shape)).digest('hex')
 }
