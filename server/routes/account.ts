@@ -65,7 +65,9 @@ export const accountRouter: MakeRouter = (parts) => {
   async function beginSession(request: Request, actor: Actor) {
     await renew(request)
     await new Promise<void>((resolve, reject) =>
-      request.logIn(actor, { keepSessionInfo: true, session: true }, (error: unknown) => (error ? reject(error as Error) : resolve())),
+      request.logIn(actor, { keepSessionInfo: true, session: true }, (error: unknown) =>
+        error ? reject(error as Error) : resolve(),
+      ),
     )
     return describe(actor, request)
   }
