@@ -51,7 +51,7 @@ export function fileUnreadable(fileName: string, problem: ReadingProblem): ApiEr
       value: value ?? undefined,
       expected: expected ?? undefined,
     },
-    `${fileName}: ${reason}`,
+    reason.includes(fileName) ? reason : `${fileName}: ${reason}`,
   )
 }
 
