@@ -1,10 +1,10 @@
 import { readFile } from 'node:fs/promises'
 import { isAbsolute, join } from 'node:path'
-import type { ReadingMapping, ValueUnit, WavelengthUnit } from '../shared/contract/scans.js'
+import type { ValueUnit, WavelengthUnit } from '../shared/contract/scans.js'
 import { makeCurve, type Curve } from '../shared/physics/curve.js'
 import { readMeasurementFile } from '../server/reading/readMeasurementFile.js'
 import { ReadingError } from '../server/reading/readingError.js'
-import type { FoundColumn, FoundTable, ReadScan, ReadingResult } from '../server/reading/readingResult.js'
+import type { ColumnChoice, FoundColumn, FoundTable, ReadScan, ReadingResult } from '../server/reading/readingResult.js'
 import { CommandError } from './commandError.js'
 import type { ScanReference } from './deviceFile.js'
 
@@ -60,53 +60,28 @@ function readAsAsked(path: string, bytes: Uint8Array, reference: ScanReference, 
   const asked = [sheet, columns.wavelength, valueColumn, units.wavelength, valueUnit].some((one) => one !== undefined)
   if (!asked) return single(path, readMeasurementFile(bytes, path, { expected: wanted }))
 
-  const { tables, mapping } = proposal(bytes, path, wanted)
+  const { tables, taken } = proposal(bytes, path, wanted)
   const ofSheet = tables.filter((one) => sheet === undefined || one.sheet === sheet)
   const named = columns.wavelength ?? valueColumn
   const table =
     ofSheet.find((one) => valueColumn !== undefined && findColumn(one, valueColumn)) ??
     ofSheet.find((one) => named !== undefined && findColumn(one, named)) ??
-    ofSheet.find((one) => one.tableIndex === mapping?.tableIndex) ??
+    ofSheet.find((one) => one.tableIndex === taken) ??
     ofSheet[0]
   if (!table) {
     const names = [...new Set(tables.map((one) => one.sheet).filter(Boolean))].join(', ')
     throw new CommandError(`${path} has no sheet "${sheet}"${names ? `; it has ${names}` : ''}.`)
   }
-  const wavelength =
-    columns.wavelength === undefined
-      ? table.columns.find((one) => one.role === 'wavelength')
-      : columnOf(path, table, columns.wavelength)
-  if (!wavelength)
-    throw new CommandError(`${path}: say which column holds the wavelengths with "columns": {"wavelength": …}.`)
-  const valueColumns =
-    valueColumn === undefined
-      ? table.columns.filter(
-          (one) => one !== wavelength && (one.role === wanted || (wanted === 'eqe' && one.role === 'responsivity')),
-        )
-      : [columnOf(path, table, valueColumn)]
-  if (valueColumns.length === 0)
-    throw new CommandError(
-      `${path}: say which column holds the ${wanted === 'eqe' ? 'EQE' : wanted} with "columns": {"${wanted}": …}.`,
-    )
-  const proposedUnit = (column: number) => mapping?.series.find((one) => one.column === column)?.unit
-  const asMapping: ReadingMapping = {
-    sheet: table.sheet,
+  const index = (column: string | number) => columnOf(path, table, column).index
+  const choice: ColumnChoice = {
     tableIndex: table.tableIndex,
-    wavelength: {
-      column: wavelength.index,
-      unit:
-        units.wavelength === undefined
-          ? (mapping?.wavelength.unit ?? 'nm')
-          : unitOf(path, units.wavelength, WAVELENGTH_UNITS),
-    },
-    series: valueColumns.map((column) => ({
-      column: column.index,
-      quantity: wanted,
-      unit: valueUnit === undefined ? (proposedUnit(column.index) ?? 'fraction') : unitOf(path, valueUnit, VALUE_UNITS),
-      label: column.header,
-    })),
+    quantity: wanted,
+    ...(columns.wavelength !== undefined && { wavelengthColumn: index(columns.wavelength) }),
+    ...(valueColumn !== undefined && { valueColumns: [index(valueColumn)] }),
+    ...(units.wavelength !== undefined && { wavelengthUnit: unitOf(path, units.wavelength, WAVELENGTH_UNITS) }),
+    ...(valueUnit !== undefined && { valueUnit: unitOf(path, valueUnit, VALUE_UNITS) }),
   }
-  return single(path, readMeasurementFile(bytes, path, { mapping: asMapping }))
+  return single(path, readMeasurementFile(bytes, path, { expected: wanted, choice }))
 }
 
 /** Without a screen to choose on, a file with several scans one after the other is not guessed at. */
@@ -120,16 +95,13 @@ function single(path: string, result: ReadingResult): ReadingResult {
   )
 }
 
-/** The tables of a file even where no mapping could be proposed. */
-function proposal(
-  bytes: Uint8Array,
-  path: string,
-  wanted: Wanted,
-): { tables: FoundTable[]; mapping: ReadingMapping | null } {
+/** The tables of a file even where no mapping could be proposed; null for the index of the one that would be taken. */
+function proposal(bytes: Uint8Array, path: string, wanted: Wanted): { tables: FoundTable[]; taken: number | null } {
   try {
-    return readMeasurementFile(bytes, path, { expected: wanted })
+    const { tables, mapping } = readMeasurementFile(bytes, path, { expected: wanted })
+    return { tables, taken: mapping.tableIndex }
   } catch (error) {
-    if (error instanceof ReadingError && error.details.tables) return { tables: error.details.tables, mapping: null }
+    if (error instanceof ReadingError && error.details.tables) return { tables: error.details.tables, taken: null }
     throw error
   }
 }

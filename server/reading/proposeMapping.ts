@@ -3,7 +3,7 @@ import { isWavelengthUnit, type NumberedColumn } from './columns.js'
 import type { WorkingTable } from './foundTables.js'
 import { plainWords, roleInHeader } from './headerRole.js'
 import { ReadingError } from './readingError.js'
-import type { ColumnRole } from './readingResult.js'
+import type { ColumnChoice, ColumnRole } from './readingResult.js'
 import { unitInHeader, WRITTEN_WAVELENGTH_UNIT } from './units.js'
 import { wavelengthUnitByRange } from './wavelengthColumn.js'
 
@@ -22,8 +22,15 @@ const QUANTITY_OF: Partial<Record<ColumnRole, Quantity>> = {
 }
 const RAW_ROLES = new Set<ColumnRole>(['signal-x', 'signal-y', 'magnitude', 'phase', 'reference', 'monitor', 'dark'])
 
-/** What the table seems to hold, as a mapping that a person may correct. @throws ReadingError when nothing can be read. */
-export function proposeMapping(table: WorkingTable, fileName: string): Proposal {
+/**
+ * What the table seems to hold, as a mapping that a person may correct; units that were stated are taken as they are.
+ * @throws ReadingError when nothing can be read.
+ */
+export function proposeMapping(
+  table: WorkingTable,
+  fileName: string,
+  stated: Pick<ColumnChoice, 'wavelengthUnit' | 'valueUnit'> = {},
+): Proposal {
   const notes: string[] = []
   const wavelength = table.columns.find((column) => column.role === 'wavelength')
   if (!wavelength)
@@ -33,18 +40,18 @@ export function proposeMapping(table: WorkingTable, fileName: string): Proposal 
     })
   const chosen = table.columns.filter((column) => QUANTITY_OF[column.role] && column !== wavelength)
   if (!chosen.some((column) => column.role !== 'noise')) throw nothingToRead(table, fileName)
-  refuseUnknownUnits(chosen, table)
+  if (stated.valueUnit === undefined) refuseUnknownUnits(chosen, table)
   const series = chosen.map((column) => ({
     column: column.index,
     quantity: QUANTITY_OF[column.role]!,
-    unit: unitOf(column, chosen, notes),
+    unit: stated.valueUnit ?? unitOf(column, chosen, notes),
     label: labelOf(column, table, fileName).slice(0, 200),
   }))
   return {
     mapping: {
       sheet: table.sheet,
       tableIndex: table.tableIndex,
-      wavelength: { column: wavelength.index, unit: wavelengthUnit(wavelength, notes) },
+      wavelength: { column: wavelength.index, unit: stated.wavelengthUnit ?? wavelengthUnit(wavelength, notes) },
       series,
     },
     notes,

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import type { ReadingMapping } from '../../shared/contract/scans.js'
 import { applyMapping } from './applyMapping.js'
+import { withChoice } from './columnChoice.js'
 import { decodeText } from './decodeText.js'
 import { delimitedTable } from './delimitedTable.js'
 import { doubtsAbout } from './doubts.js'
@@ -10,7 +11,7 @@ import { READING_LIMITS } from './limits.js'
 import { proposeMapping } from './proposeMapping.js'
 import type { RawGrid } from './rawGrid.js'
 import { ReadingError } from './readingError.js'
-import type { ReadingOptions, ReadingResult } from './readingResult.js'
+import type { ColumnChoice, ReadingOptions, ReadingResult } from './readingResult.js'
 import { workbookTable } from './workbookTable.js'
 
 const PREVIEW_ROWS = 40
@@ -32,7 +33,9 @@ export function readMeasurementFile(bytes: Uint8Array, fileName: string, options
       notes: decided,
     } = options.mapping
       ? { mapping: options.mapping, table: mappedTable(tables, options.mapping), notes: [] }
-      : firstReadable(tables, fileName)
+      : options.choice
+        ? chosen(tables, options.choice, fileName)
+        : firstReadable(tables, fileName)
     const further: string[] = []
     const scans = applyMapping(table, mapping, further)
     const appendedTables = tables.filter((one) => one.repeats === table.tableIndex).map((one) => one.tableIndex)
@@ -78,6 +81,12 @@ function mappedTable(tables: WorkingTable[], mapping: ReadingMapping): WorkingTa
   throw new ReadingError('mapping-mismatch', `The file has no table ${mapping.tableIndex + 1}${where}.`, {
     expected: 'a mapping made for a file of this shape',
   })
+}
+
+function chosen(tables: WorkingTable[], choice: ColumnChoice, fileName: string) {
+  const table = tables[choice.tableIndex]
+  if (!table) throw new ReadingError('mapping-mismatch', `The file has no table ${choice.tableIndex + 1}.`)
+  return { ...proposeMapping(withChoice(table, choice), fileName, choice), table }
 }
 
 /** The first table that can be read; when none can, the trouble of the first. */

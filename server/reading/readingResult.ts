@@ -1,4 +1,4 @@
-import type { Quantity, ReadTable, ReadingMapping } from '../../shared/contract/scans.js'
+import type { Quantity, ReadTable, ReadingMapping, ValueUnit, WavelengthUnit } from '../../shared/contract/scans.js'
 
 /** What a column may hold, as far as the reader can tell. */
 export const COLUMN_ROLES = [
@@ -48,9 +48,21 @@ export interface ReadScan {
   noise?: Float64Array
 }
 
+/** Columns and units that a person names where the table alone does not tell them; what is left out is proposed. */
+export interface ColumnChoice {
+  tableIndex: number
+  wavelengthColumn?: number
+  valueColumns?: number[]
+  quantity: 'eqe' | 'reflectance' | 'irradiance'
+  wavelengthUnit?: WavelengthUnit
+  valueUnit?: ValueUnit
+}
+
 export interface ReadingOptions {
   /** A person's mapping, or a remembered one, in place of the proposal. */
   mapping?: ReadingMapping
+  /** Propose a mapping of these columns. */
+  choice?: ColumnChoice
   /** What the file is uploaded for: columns whose headers say nothing are taken for it. */
   expected?: 'eqe' | 'reflectance' | 'irradiance'
   /** Rows of each table given as raw text for the preview. Default 40. */
