@@ -88,24 +88,20 @@ export const ROLE_WORDS: readonly { role: ColumnRole; words: readonly string[] }
       'natezenie napromienienia, irradians, облученность, 辐照度, 放射照度, 분광복사조도, am1 5g, am1 5d, am0',
     ),
   },
+  { role: 'phase', words: list('phase, theta, θ, phi, φ, phasenwinkel, fase, faza') },
   {
-    role: 'phase',
-    words: list(
-      'phase, theta, θ, phi, φ, phasenwinkel, fase, faza, signal-x, x, in phase, inphase, lock in x',
-      'lockin x, signal x, x signal, x channel, realteil',
-    ),
+    role: 'signal-x',
+    words: list('x, in phase, inphase, lock in x, lockin x, signal x, x signal, x channel, realteil'),
   },
   {
     role: 'signal-y',
     words: list('y, quadrature, lock in y, lockin y, signal y, y signal, y channel, quadratur'),
   },
+  { role: 'dark', words: list('dark, dark signal, stray, stray light, background, dunkel, dunkelsignal') },
+  { role: 'monitor', words: list('monitor, monitor diode, monitordiode, monitor signal, lamp monitor') },
   {
-    role: 'dark',
-    words: list(
-      'dark, dark signal, stray, stray light, background, dunkel, dunkelsignal, monitor, monitor',
-      'monitor diode, monitordiode, monitor signal, lamp monitor, reference, reference, ref',
-      'reference detector, reference signal, referenz, referenzdetektor, calibration',
-    ),
+    role: 'reference',
+    words: list('reference, ref, reference detector, reference signal, referenz, referenzdetektor, calibration'),
   },
   {
     role: 'magnitude',
