@@ -3,7 +3,7 @@ import { toNanometres } from '../../shared/physics/units.js'
 import type { NumberedColumn } from './columns.js'
 import type { WorkingTable } from './foundTables.js'
 import { columnLetters } from './numerals.js'
-import { cellText } from './rawGrid.js'
+import { shownCell } from './rawGrid.js'
 import { ReadingError } from './readingError.js'
 import type { ReadScan } from './readingResult.js'
 import { PLAUSIBLE_NM, valueInBaseUnit, WRITTEN_WAVELENGTH_UNIT } from './units.js'
@@ -61,7 +61,7 @@ function wavelengthsNm(
 ): number[] {
   return column.numbers.map((value, row) => {
     const { line, cells } = table.rows[row]!
-    const where = { line, column: nameOf(column), value: cellText(cells[column.index]) }
+    const where = { line, column: nameOf(column), value: shownCell(cells[column.index]) }
     if (value === null) throw notANumber(where, 'a wavelength')
     if (!(value > 0))
       throw new ReadingError(
@@ -87,7 +87,7 @@ function ascendingOrder(table: WorkingTable, column: NumberedColumn, nm: number[
   const seen = new Map<number, number>()
   nm.forEach((value, row) => {
     const before = seen.get(value)
-    const written = cellText(table.rows[row]!.cells[column.index])
+    const written = shownCell(table.rows[row]!.cells[column.index])
     if (before !== undefined)
       throw new ReadingError(
         'repeated-wavelength',
@@ -99,7 +99,7 @@ function ascendingOrder(table: WorkingTable, column: NumberedColumn, nm: number[
   const isDescending = nm.length > 1 && nm[1]! < nm[0]!
   const wrong = nm.findIndex((value, row) => row > 0 && value > nm[row - 1]! === isDescending)
   if (wrong > 0) {
-    const written = (row: number) => cellText(table.rows[row]!.cells[column.index])
+    const written = (row: number) => shownCell(table.rows[row]!.cells[column.index])
     throw new ReadingError(
       'unsorted-wavelength',
       `The wavelengths go up and down: line ${line(wrong)} has ${written(wrong)} after ${written(wrong - 1)}.`,
@@ -119,7 +119,7 @@ function pointsOf(
   hasCompany: boolean,
   notes: string[],
 ): number[] {
-  const isEmpty = (row: number) => cellText(table.rows[row]!.cells[column.index]) === ''
+  const isEmpty = (row: number) => shownCell(table.rows[row]!.cells[column.index]) === ''
   const points = order.filter((row) => !isEmpty(row))
   const [first, last] = [points[0], points.at(-1)]
   if (first === undefined || last === undefined || points.length < 2)
@@ -157,7 +157,7 @@ function inUnit(table: WorkingTable, column: NumberedColumn, row: number, unit: 
   const value = column.numbers[row]
   const { line, cells } = table.rows[row]!
   if (value === null || value === undefined)
-    throw notANumber({ line, column: nameOf(column), value: cellText(cells[column.index]) }, 'a number')
+    throw notANumber({ line, column: nameOf(column), value: shownCell(cells[column.index]) }, 'a number')
   return valueInBaseUnit(value, unit, nm[row]!)
 }
 

@@ -3,7 +3,7 @@ import { findBlocks, isSingleColumn, type Block } from './blocks.js'
 import { guessColumns, type ColumnContext, type NumberedColumn } from './columns.js'
 import { headersOf } from './headers.js'
 import { numeralKind, type DecimalMark } from './numerals.js'
-import { cellText, isEmptyCell, type RawGrid, type RawRow } from './rawGrid.js'
+import { cellText, isEmptyCell, shownCell, type RawGrid, type RawRow } from './rawGrid.js'
 import { ReadingError } from './readingError.js'
 import type { FoundColumn, FoundTable } from './readingResult.js'
 import { appendedScans } from './wavelengthColumn.js'
@@ -60,7 +60,7 @@ function decimalMark(blocks: readonly Block[]): DecimalMark {
       for (const cell of row.cells.slice(fromColumn, toColumn + 1)) {
         const kind = numeralKind(cell)
         if (kind === null || kind === 'whole') continue
-        const value = cellText(cell)
+        const value = shownCell(cell)
         if (kind === 'grouped')
           throw new ReadingError(
             'mixed-decimal-marks',

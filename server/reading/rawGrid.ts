@@ -23,3 +23,11 @@ export const isEmptyCell = (cell: RawCell | undefined): boolean =>
   cell === undefined || (typeof cell === 'string' && cell.trim() === '')
 
 export const cellText = (cell: RawCell | undefined): string => (cell === undefined ? '' : String(cell).trim())
+
+const LONGEST_SHOWN = 40
+
+/** A cell as a sentence quotes it: a cell of a broken file may be as long as the file. */
+export function shownCell(cell: RawCell | undefined): string {
+  const text = cellText(cell)
+  return text.length > LONGEST_SHOWN ? `${text.slice(0, LONGEST_SHOWN)}…` : text
+}
