@@ -2,6 +2,9 @@ import session from 'express-session'
 import type { Database } from '../database/transaction.js'
 import { deleteSession, readSession, saveSession, touchSession } from '../database/repositories/sessions.js'
 
+/** Being used is written down at most this often, so that reading a page writes nothing to the database. */
+const TOUCH_EVERY_MS = 60_000
+
 /** Sessions live in MariaDB, so that any server answers for any browser. */
 export class DatabaseSessionStore extends session.Store {
   constructor(private readonly database: Database) {
@@ -9,10 +12,11 @@ export class DatabaseSessionStore extends session.Store {
   }
 
   override get(id: string, done: (error: unknown, data?: session.SessionData | null) => void): void {
-    readSession(this.database.work, id, new Date()).then(
-      (data) => done(null, data ? (JSON.parse(data) as session.SessionData) : null),
-      done,
-    )
+    readSession(this.database.work, id, new Date()).then((record) => {
+      if (!record) return done(null, null)
+      const data = JSON.parse(record.data) as session.SessionData
+      done(null, { ...data, touchedAt: record.lastUsedAt.getTime() })
+    }, done)
   }
 
   override set(id: string, data: session.SessionData, done: (error?: unknown) => void = () => undefined): void {
@@ -27,6 +31,7 @@ export class DatabaseSessionStore extends session.Store {
   }
 
   override touch(id: string, data: session.SessionData, done: (error?: unknown) => void = () => undefined): void {
+    if (Date.now() - (data.touchedAt ?? 0) < TOUCH_EVERY_MS) return done()
     touchSession(this.database.work, id, new Date(), expiryOf(data)).then(() => done(), done)
   }
 
@@ -45,6 +50,8 @@ declare module 'express-session' {
   interface SessionData {
     csrfToken?: string
     client?: string
+    /** When its use was last written down, ms. */
+    touchedAt?: number
     passport?: { user?: string }
   }
 }

@@ -27,6 +27,22 @@ export async function devicesById(work: Work, deviceIds: string[]): Promise<Devi
   return withStacks(work, await work.findBy(Device, { id: In(deviceIds), deletedAt: IsNull() }))
 }
 
+/** What a matching needs of a device: its wiring and its junctions, no layers. */
+export async function deviceWithJunctions(
+  work: Work,
+  projectId: string,
+  deviceId: string,
+): Promise<Pick<DeviceWithStack, 'id' | 'terminals' | 'junctions'> | null> {
+  const [device, junctions] = await Promise.all([
+    work.findOne(Device, {
+      select: { id: true, terminals: true },
+      where: { id: deviceId, projectId, deletedAt: IsNull() },
+    }),
+    work.find(Junction, { where: { deviceId }, order: { position: 'ASC' } }),
+  ])
+  return device && { id: device.id, terminals: device.terminals, junctions }
+}
+
 export async function devicesOfProjectById(
   work: Work,
   projectId: string,

@@ -6,8 +6,10 @@ import type { Work } from '../transaction.js'
 import type { NamePosition } from './position.js'
 
 /** The person's membership with its project, a deleted project too. */
-export function membershipOf(work: Work, projectId: string, userId: string): Promise<Membership | null> {
-  return work.findOne(Membership, { where: { projectId, userId }, relations: { project: true } })
+export async function membershipOf(work: Work, projectId: string, userId: string): Promise<Membership | null> {
+  // One statement: `findOne` with a relation would ask for the ids first.
+  const [membership] = await work.find(Membership, { where: { projectId, userId }, relations: { project: true } })
+  return membership ?? null
 }
 
 export interface ProjectCounts {

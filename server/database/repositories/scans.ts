@@ -43,10 +43,19 @@ export async function scanHeadsOfDevices(work: Work, deviceIds: string[]): Promi
   return work.find(Scan, { select: HEAD, where: { deviceId: In(deviceIds), deletedAt: IsNull() } })
 }
 
+const MEASURED = {
+  ...HEAD,
+  version: true,
+  conditions: true,
+  wavelengthNm: true,
+  values: true,
+} as const satisfies FindOptionsSelect<Scan>
+export type MeasuredScanRow = Pick<Scan, keyof typeof MEASURED>
+
 /** The scans with their curves and conditions, without people and files. */
-export async function scansWithCurves(work: Work, scanIds: string[]): Promise<Scan[]> {
+export async function scansWithCurves(work: Work, scanIds: string[]): Promise<MeasuredScanRow[]> {
   if (scanIds.length === 0) return []
-  return work.findBy(Scan, { id: In(scanIds) })
+  return work.find(Scan, { select: MEASURED, where: { id: In(scanIds) } })
 }
 
 /** The scans in the order in which they were made, with their files and people. */

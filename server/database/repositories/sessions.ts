@@ -11,9 +11,8 @@ export interface SessionToSave {
   expiresAt: Date
 }
 
-export async function readSession(work: Work, id: string, now: Date): Promise<string | null> {
-  const record = await work.findOneBy(SessionRecord, { id, expiresAt: MoreThan(now) })
-  return record?.data ?? null
+export function readSession(work: Work, id: string, now: Date): Promise<SessionRecord | null> {
+  return work.findOneBy(SessionRecord, { id, expiresAt: MoreThan(now) })
 }
 
 export async function saveSession(work: Work, session: SessionToSave): Promise<void> {

@@ -6,7 +6,7 @@ export async function findDevice(work: Work, projectId: string, deviceId: string
   return foundDevice(await deviceOfProject(work, projectId, deviceId))
 }
 
-export function foundDevice(device: DeviceWithStack | null): DeviceWithStack {
+export function foundDevice<Found>(device: Found | null): Found {
   if (!device) throw new ApiError('NOT_FOUND', { what: 'device' }, 'There is no such device in this project.')
   return device
 }

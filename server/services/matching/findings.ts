@@ -1,15 +1,14 @@
 import { SEVERITIES, type Finding, type Severity } from '../../../shared/contract/findings.js'
 import { runChecks, type ScanConditions, type ScanInContext } from '../../../shared/physics/checks/index.js'
 import type { Conditions } from '../../../shared/contract/scans.js'
-import { totalIrradianceWM2, type Spectrum } from '../../../shared/physics/spectrum.js'
+import type { Spectrum } from '../../../shared/physics/spectrum.js'
 import { BoundedMemory } from '../boundedMemory.js'
+import { spectrumKey, type ChosenSpectrum } from './chosenSpectrum.js'
 import type { MeasuredDevice, MeasuredScan } from './measuredDevice.js'
 
 /** What the checks find on the scans that stand for a device's junctions, in the order of the junctions. */
-export function findingsOf(device: MeasuredDevice, spectrum: Spectrum): Finding[] {
-  return device.junctions.flatMap(({ scan, position }) =>
-    scan ? findingsOfScan(scan, position, device, spectrum) : [],
-  )
+export function findingsOf(device: MeasuredDevice, chosen: ChosenSpectrum): Finding[] {
+  return device.junctions.flatMap(({ scan, position }) => (scan ? findingsOfScan(scan, position, device, chosen) : []))
 }
 
 /**
@@ -23,7 +22,7 @@ export function findingsOfScan(
   scan: MeasuredScan,
   position: number,
   device: MeasuredDevice,
-  spectrum: Spectrum,
+  chosen: ChosenSpectrum,
 ): Finding[] {
   const others = device.junctions.map((junction) => junction.scan?.id ?? '')
   const key = [
@@ -33,12 +32,11 @@ export function findingsOfScan(
     device.terminals,
     ...others,
     device.reflectance?.id ?? '',
-    spectrum.id,
-    totalIrradianceWM2(spectrum),
+    spectrumKey(chosen),
   ].join(' ')
   const known = found.get(key)
   if (known) return known
-  const { findings } = runChecks(contextOf(scan, position, device, spectrum))
+  const { findings } = runChecks(contextOf(scan, position, device, chosen.spectrum))
   return found.keep(
     key,
     findings.map((finding) => ({

@@ -1,7 +1,6 @@
 import { makeCurve } from '../../../shared/physics/curve.js'
 import type { DeviceWithStack } from '../../database/repositories/devices.js'
-import type { Scan } from '../../database/entities/Scan.js'
-import { scanHeadsOfDevices, scansWithCurves } from '../../database/repositories/scans.js'
+import { scanHeadsOfDevices, scansWithCurves, type MeasuredScanRow } from '../../database/repositories/scans.js'
 import type { Work } from '../../database/transaction.js'
 import type { MeasuredDevice, MeasuredScan } from './measuredDevice.js'
 import { scansInUse } from './scansInUse.js'
@@ -13,7 +12,10 @@ export interface DeviceWithScans {
 }
 
 /** The devices with the scans that stand for their junctions, in the order given: two queries for any number. */
-export async function measureDevices(work: Work, devices: readonly DeviceWithStack[]): Promise<DeviceWithScans[]> {
+export async function measureDevices(
+  work: Work,
+  devices: readonly Pick<DeviceWithStack, 'id' | 'terminals' | 'junctions'>[],
+): Promise<DeviceWithScans[]> {
   const heads = await scanHeadsOfDevices(
     work,
     devices.map((device) => device.id),
@@ -22,8 +24,8 @@ export async function measureDevices(work: Work, devices: readonly DeviceWithSta
     work,
     scansInUse(heads).map((head) => head.id),
   )
-  const eqeOfJunction = new Map<string, Scan>()
-  const reflectanceOfDevice = new Map<string, Scan>()
+  const eqeOfJunction = new Map<string, MeasuredScanRow>()
+  const reflectanceOfDevice = new Map<string, MeasuredScanRow>()
   for (const scan of chosen)
     if (scan.quantity === 'eqe' && scan.junctionId) eqeOfJunction.set(scan.junctionId, scan)
     else reflectanceOfDevice.set(scan.deviceId, scan)
@@ -45,9 +47,9 @@ export async function measureDevices(work: Work, devices: readonly DeviceWithSta
   }))
 }
 
-export function measuredScan(scan: Scan): MeasuredScan
-export function measuredScan(scan: Scan | undefined): MeasuredScan | null
-export function measuredScan(scan: Scan | undefined): MeasuredScan | null {
+export function measuredScan(scan: MeasuredScanRow): MeasuredScan
+export function measuredScan(scan: MeasuredScanRow | undefined): MeasuredScan | null
+export function measuredScan(scan: MeasuredScanRow | undefined): MeasuredScan | null {
   if (!scan) return null
   const { id, version, state, conditions, wavelengthNm, values } = scan
   return { id, version, state, conditions, curve: makeCurve(wavelengthNm, values) }

@@ -1,8 +1,9 @@
 import type { DeviceCurves } from '../../../shared/contract/matching.js'
+import { deviceWithJunctions } from '../../database/repositories/devices.js'
 import type { Database } from '../../database/transaction.js'
 import { presentCurve } from '../../presenters/curve.js'
 import type { Actor } from '../actor.js'
-import { findDevice } from '../devices/findDevice.js'
+import { foundDevice } from '../devices/findDevice.js'
 import { requireMember } from '../rights.js'
 import { measureDevices } from './measureDevices.js'
 
@@ -14,7 +15,8 @@ export async function readDeviceCurves(
   deviceId: string,
 ): Promise<DeviceCurves> {
   await requireMember(work, actor, projectId, 'read')
-  const [device] = await measureDevices(work, [await findDevice(work, projectId, deviceId)])
+  const described = foundDevice(await deviceWithJunctions(work, projectId, deviceId))
+  const [device] = await measureDevices(work, [described])
   const { junctions, reflectance } = device!.measured
   return {
     junctions: junctions.flatMap(({ id, position, scan }) =>

@@ -1,8 +1,9 @@
 import type { Matching } from '../../../shared/contract/matching.js'
 import type { SpectrumChoice } from '../../../shared/contract/spectra.js'
+import { deviceWithJunctions } from '../../database/repositories/devices.js'
 import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
-import { findDevice } from '../devices/findDevice.js'
+import { foundDevice } from '../devices/findDevice.js'
 import { requireMember } from '../rights.js'
 import { chooseSpectrum } from '../spectra/chooseSpectrum.js'
 import { computeMatching } from './computeMatching.js'
@@ -17,6 +18,7 @@ export async function readMatching(
 ): Promise<Matching> {
   await requireMember(work, actor, projectId, 'read')
   const spectrum = await chooseSpectrum(work, projectId, choice)
-  const [device] = await measureDevices(work, [await findDevice(work, projectId, deviceId)])
+  const described = foundDevice(await deviceWithJunctions(work, projectId, deviceId))
+  const [device] = await measureDevices(work, [described])
   return computeMatching(device!.measured, spectrum)
 }

@@ -1,5 +1,4 @@
 import type { Scan as ScanReply } from '../../../shared/contract/scans.js'
-import { referenceSpectrum } from '../../../shared/physics/spectrum.js'
 import type { Scan } from '../../database/entities/Scan.js'
 import { devicesById } from '../../database/repositories/devices.js'
 import type { Work } from '../../database/transaction.js'
@@ -7,6 +6,7 @@ import { presentScan, type ScanStanding } from '../../presenters/scan.js'
 import { findingsOfScan, worstOf } from '../matching/findings.js'
 import type { MeasuredDevice } from '../matching/measuredDevice.js'
 import { measureDevices, measuredScan } from '../matching/measureDevices.js'
+import { standardSpectrum } from '../spectra/chooseSpectrum.js'
 
 /** The scans with what their rows do not know: whether they are in use, and the worst finding, under AM1.5G. */
 export async function presentScans(work: Work, scans: readonly Scan[]): Promise<ScanReply[]> {
@@ -27,6 +27,6 @@ function standingOf(scan: Scan, device: MeasuredDevice | undefined): ScanStandin
   if (!device || !junction) return { inUse: device?.reflectance?.id === scan.id, worstFinding: null }
   return {
     inUse: junction.scan?.id === scan.id,
-    worstFinding: worstOf(findingsOfScan(measuredScan(scan), junction.position, device, referenceSpectrum('AM1.5G'))),
+    worstFinding: worstOf(findingsOfScan(measuredScan(scan), junction.position, device, standardSpectrum())),
   }
 }

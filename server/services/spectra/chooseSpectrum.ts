@@ -12,13 +12,22 @@ import {
 import { curveOfSpectrum, spectrumHead } from '../../database/repositories/spectra.js'
 import type { Work } from '../../database/transaction.js'
 import { BoundedMemory } from '../boundedMemory.js'
-import type { ChosenSpectrum } from '../matching/computeMatching.js'
+import type { ChosenSpectrum } from '../matching/chosenSpectrum.js'
 
 /** The spectrum that a result is asked for, ready for integrals, scaled if that was asked for. */
 export async function chooseSpectrum(work: Work, projectId: string, choice: SpectrumChoice): Promise<ChosenSpectrum> {
   const spectrum = isReference(choice.spectrum)
     ? referenceSpectrum(choice.spectrum)
     : await uploadedSpectrum(work, projectId, choice.spectrum)
+  return chosen(spectrum, choice)
+}
+
+/** The spectrum that a scan is judged under where nobody chose one. */
+export function standardSpectrum(): ChosenSpectrum {
+  return chosen(referenceSpectrum('AM1.5G'), { spectrum: 'AM1.5G' })
+}
+
+function chosen(spectrum: Spectrum, choice: SpectrumChoice): ChosenSpectrum {
   const total = totalIrradianceWM2(spectrum)
   const scaledTo = choice.scaleToWM2 ?? null
   return {
