@@ -60,7 +60,10 @@ export function useDeleteDevice(projectId: MaybeRefOrGetter<string>) {
   const refresh = useRefresh()
   return useChange(
     (deviceId: string) => api.deleteDevice(toValue(projectId), deviceId),
-    () => refresh.project(toValue(projectId)),
+    (_, deviceId) => {
+      refresh.forgetDevice(toValue(projectId), deviceId)
+      return refresh.project(toValue(projectId))
+    },
   )
 }
 

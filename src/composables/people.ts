@@ -69,15 +69,14 @@ export function useInvitationLink(token: MaybeRefOrGetter<string>) {
   })
 }
 
-/** Accepting signs the person in. */
+/** Accepts, then signs in with the same password, so that the project opens at once; nothing read as someone else stays. */
 export function useAcceptInvitation(token: MaybeRefOrGetter<string>) {
   const client = useQueryClient()
   const session = useSessionStore()
-  return useChange(
-    (body: BodySent<typeof acceptInvitation>) => api.acceptInvitation(toValue(token), body),
-    async () => {
-      client.removeQueries()
-      await session.reread()
-    },
-  )
+  return useChange(async ({ email, ...body }: { email: string } & BodySent<typeof acceptInvitation>) => {
+    const reply = await api.acceptInvitation(toValue(token), body)
+    await session.enter({ email, password: body.password })
+    client.removeQueries()
+    return reply
+  })
 }

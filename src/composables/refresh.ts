@@ -11,6 +11,12 @@ export function useRefresh() {
         client.invalidateQueries({ queryKey: queryKeys.projects }),
       ])
     },
+    /** What is known of a device that is gone; its page must not ask for it again. */
+    forgetDevice(projectId: string, deviceId: string): void {
+      for (const kind of ['device', 'matching', 'curves']) {
+        client.removeQueries({ queryKey: [...queryKeys.project(projectId), kind, deviceId] })
+      }
+    },
     async spectra(projectId: string): Promise<void> {
       await client.invalidateQueries({ queryKey: queryKeys.spectra(projectId) })
     },

@@ -14,6 +14,8 @@ const light: ThemeDefinition = {
   colors: {
     background: '#faf7f0',
     surface: '#fffdf8',
+    'surface-variant': '#2a303c',
+    'on-surface-variant': '#f6f2e8',
     primary: '#24466b',
     secondary: '#57534a',
     success: '#2c6b45',
@@ -52,6 +54,8 @@ const dark: ThemeDefinition = {
   colors: {
     background: '#0a101b',
     surface: '#111927',
+    'surface-variant': '#d9d5ca',
+    'on-surface-variant': '#151b26',
     primary: '#a9c6e8',
     secondary: '#b7b3a8',
     success: '#7fc79b',

@@ -1,5 +1,5 @@
 import { defineStore } from 'pinia'
-import { ref } from 'vue'
+import { shallowRef } from 'vue'
 
 /** A way back or onward, offered as a button while the notice stands. */
 export interface NoticeAction {
@@ -13,16 +13,17 @@ export interface Notice {
   action?: NoticeAction
 }
 
-/** Short sentences at the foot of the page, one at a time. */
+/** A short sentence at the foot of the page; a new one takes the place of the last, so that it is never late. */
 export const useNoticesStore = defineStore('notices', () => {
-  const queue = ref<Notice[]>([])
+  const current = shallowRef<Notice | null>(null)
   let count = 0
   function add(notice: Omit<Notice, 'id'>): void {
     count += 1
-    queue.value.push({ ...notice, id: count })
+    current.value = { ...notice, id: count }
   }
+  /** Takes a notice away, unless another has taken its place already. */
   function drop(id: number): void {
-    queue.value = queue.value.filter((notice) => notice.id !== id)
+    if (current.value?.id === id) current.value = null
   }
-  return { queue, add, drop }
+  return { current, add, drop }
 })

@@ -119,7 +119,8 @@ describe('an invitation', () => {
     const server = new FakeServer(session({ person: null }))
       .on(readInvitation, () => offer)
       .on(acceptInvitation, () => ({ projectId: idOf(100) }))
-    const { screen } = await openScreen(`/invitations/${TOKEN}`)
+      .on(signIn, () => session())
+    const { screen, router } = await openScreen(`/invitations/${TOKEN}`)
     expect(shownText()).toContain('Tomasz Reyes invites new@heliolab.example as designer')
     await type('Your name', 'Kim Sato')
     await type('Choose a password', 'short')
@@ -132,12 +133,15 @@ describe('an invitation', () => {
       name: 'Kim Sato',
       password: 'long enough to be one',
     })
+    expect(server.requestsOf(signIn)[0]?.body).toEqual({ email: offer.email, password: 'long enough to be one' })
+    await arrival(router, 'project')
   })
 
   test('a known person gives the password only', async () => {
     const server = new FakeServer(session({ person: null }))
       .on(readInvitation, () => ({ ...offer, accountExists: true }))
       .on(acceptInvitation, () => ({ projectId: idOf(100) }))
+      .on(signIn, () => session())
     const { screen } = await openScreen(`/invitations/${TOKEN}`)
     await type('Your password', 'old one')
     await submit(screen)
