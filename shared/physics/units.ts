@@ -39,6 +39,7 @@ export function fromNanometres(wavelengthNm: number, unit: WavelengthUnit): numb
 /**
  * EQE as a fraction; from a spectral responsivity by `EQE = SR · (h c/q) / λ` (IEC 60904-8).
  * @param wavelengthNm nm, needed for A/W only.
+ * @throws DomainError unless the value is finite and, for A/W, the wavelength above zero.
  */
 export function toFraction(value: number, unit: EfficiencyUnit, wavelengthNm: number): number {
   assertFinite(value, 'value')
@@ -48,6 +49,7 @@ export function toFraction(value: number, unit: EfficiencyUnit, wavelengthNm: nu
     case 'percent':
       return value / 100
     case 'A/W':
+      assertPositive(wavelengthNm, 'wavelengthNm')
       return (value * PHOTON_ENERGY_NM_EV) / wavelengthNm
   }
 }
@@ -61,6 +63,7 @@ export function fromFraction(eqe: number, unit: EfficiencyUnit, wavelengthNm: nu
     case 'percent':
       return eqe * 100
     case 'A/W':
+      assertPositive(wavelengthNm, 'wavelengthNm')
       return (eqe * wavelengthNm) / PHOTON_ENERGY_NM_EV
   }
 }
