@@ -10,11 +10,7 @@ import { indexAtOrBelow, type Curve } from './curve.js'
  * Cost O(n + m), nothing allocated.
  */
 export function integrateProduct(a: Curve, b: Curve, fromNm = -Infinity, toNm = Infinity): number {
-  let sum = 0
-  walkProduct(a, b, fromNm, toNm, (_x, area) => {
-    sum += area
-  })
-  return sum
+  return walkProduct(a, b, fromNm, toNm, null)
 }
 
 /**
@@ -22,56 +18,60 @@ export function integrateProduct(a: Curve, b: Curve, fromNm = -Infinity, toNm = 
  * @returns wavelengths of the union grid in nm and the integral up to each; two points of zero without an overlap.
  */
 export function cumulativeProduct(a: Curve, b: Curve, fromNm = -Infinity, toNm = Infinity): Curve {
-  const wavelengthNm: number[] = []
-  const values: number[] = []
-  let sum = 0
-  const start = walkProduct(a, b, fromNm, toNm, (x, area) => {
-    sum += area
-    wavelengthNm.push(x)
-    values.push(sum)
-  })
-  if (start === null)
+  const running: RunningIntegral = { wavelengthNm: [], values: [] }
+  walkProduct(a, b, fromNm, toNm, running)
+  if (running.values.length === 0)
     return { wavelengthNm: Float64Array.of(a.wavelengthNm[0]!, a.wavelengthNm.at(-1)!), values: new Float64Array(2) }
-  return { wavelengthNm: Float64Array.of(start, ...wavelengthNm), values: Float64Array.of(0, ...values) }
+  return { wavelengthNm: Float64Array.from(running.wavelengthNm), values: Float64Array.from(running.values) }
 }
 
-/** Calls `visit` with the end and the area of every interval of the union grid; gives its start, null if empty. */
-function walkProduct(
-  a: Curve,
-  b: Curve,
-  fromNm: number,
-  toNm: number,
-  visit: (endNm: number, area: number) => void,
-): number | null {
-  const ax = a.wavelengthNm
-  const bx = b.wavelengthNm
+interface RunningIntegral {
+  readonly wavelengthNm: number[]
+  readonly values: number[]
+}
+
+/** The one pass over the union grid. `running` is filled with every point of it, unless null; empty without overlap. */
+function walkProduct(a: Curve, b: Curve, fromNm: number, toNm: number, running: RunningIntegral | null): number {
+  const { wavelengthNm: ax, values: ay } = a
+  const { wavelengthNm: bx, values: by } = b
+  const lastA = ax.length - 2
+  const lastB = bx.length - 2
   const low = Math.max(ax[0]!, bx[0]!, fromNm)
-  const high = Math.min(ax[ax.length - 1]!, bx[bx.length - 1]!, toNm)
-  if (!(low < high)) return null
-  let i = Math.min(indexAtOrBelow(ax, low), ax.length - 2)
-  let j = Math.min(indexAtOrBelow(bx, low), bx.length - 2)
+  const high = Math.min(ax[lastA + 1]!, bx[lastB + 1]!, toNm)
+  if (!(low < high)) return 0
+  let i = Math.min(indexAtOrBelow(ax, low), lastA)
+  let j = Math.min(indexAtOrBelow(bx, low), lastB)
+  let slopeA = slopeOf(ax, ay, i)
+  let slopeB = slopeOf(bx, by, j)
   let x0 = low
-  let a0 = onSegment(a, i, x0)
-  let b0 = onSegment(b, j, x0)
+  let a0 = ay[i]! + slopeA * (low - ax[i]!)
+  let b0 = by[j]! + slopeB * (low - bx[j]!)
+  let sum = 0
+  record(running, low, 0)
   while (x0 < high) {
-    const x1 = Math.min(ax[i + 1]!, bx[j + 1]!, high)
-    const a1 = onSegment(a, i, x1)
-    const b1 = onSegment(b, j, x1)
-    visit(x1, ((x1 - x0) / 6) * (2 * a0 * b0 + a0 * b1 + a1 * b0 + 2 * a1 * b1))
-    if (x1 === ax[i + 1] && i < ax.length - 2) i++
-    if (x1 === bx[j + 1] && j < bx.length - 2) j++
+    const endA = ax[i + 1]!
+    const endB = bx[j + 1]!
+    const end = endA < endB ? endA : endB
+    const x1 = end < high ? end : high
+    const a1 = x1 === endA ? ay[i + 1]! : ay[i]! + slopeA * (x1 - ax[i]!)
+    const b1 = x1 === endB ? by[j + 1]! : by[j]! + slopeB * (x1 - bx[j]!)
+    sum += ((x1 - x0) / 6) * (a0 * (2 * b0 + b1) + a1 * (b0 + 2 * b1))
+    record(running, x1, sum)
+    if (x1 === endA && i < lastA) slopeA = slopeOf(ax, ay, ++i)
+    if (x1 === endB && j < lastB) slopeB = slopeOf(bx, by, ++j)
     x0 = x1
     a0 = a1
     b0 = b1
   }
-  return low
+  return sum
 }
 
-function onSegment(curve: Curve, i: number, x: number): number {
-  const x0 = curve.wavelengthNm[i]!
-  const x1 = curve.wavelengthNm[i + 1]!
-  const y0 = curve.values[i]!
-  if (x === x0) return y0
-  const y1 = curve.values[i + 1]!
-  return x === x1 ? y1 : y0 + ((x - x0) / (x1 - x0)) * (y1 - y0)
+function slopeOf(x: Float64Array, y: Float64Array, i: number): number {
+  return (y[i + 1]! - y[i]!) / (x[i + 1]! - x[i]!)
+}
+
+function record(running: RunningIntegral | null, wavelengthNm: number, integral: number): void {
+  if (!running) return
+  running.wavelengthNm.push(wavelengthNm)
+  running.values.push(integral)
 }
