@@ -9,10 +9,15 @@ import type { Spectrum } from './spectrum.js'
  * between their points and their product is integrated exactly; outside the scan the EQE counts as zero.
  *
  * @param eqe fraction over nm. @param fromNm @param toNm a wavelength band, the whole scan unless given.
- * @throws DomainError when the band's end lies before its start. Cost O(n + m).
+ * @throws DomainError when a limit is NaN or the band's end lies before its start. Cost O(n + m).
  */
 export function shortCircuitCurrentDensity(eqe: Curve, spectrum: Spectrum, fromNm?: number, toNm?: number): number {
-  if (fromNm !== undefined && toNm !== undefined && !(fromNm <= toNm))
+  for (const [limit, argument] of [
+    [fromNm, 'fromNm'],
+    [toNm, 'toNm'],
+  ] as const)
+    if (Number.isNaN(limit)) throw new DomainError(argument, `${argument} is NaN; it must be a wavelength in nm.`)
+  if (fromNm !== undefined && toNm !== undefined && fromNm > toNm)
     throw new DomainError('toNm', `The band ends at ${toNm} nm, before it begins at ${fromNm} nm.`)
   return integrateProduct(eqe, spectrum.photonCurrent, fromNm, toNm)
 }
