@@ -7,8 +7,20 @@ export interface NumpyResult {
   readonly arrays: Readonly<Record<string, readonly (readonly number[])[]>>
 }
 
-/** Runs a peer script of this folder with a job as JSON on its standard input. @throws when it fails. */
+/** There is no peer on this machine: the comparison is skipped. */
+export class NumpyMissing extends Error {
+  override readonly name = 'NumpyMissing'
+}
+
+let isThere: boolean | null = null
+
+/**
+ * Runs a peer script of this folder with a job as JSON on its standard input.
+ * @throws NumpyMissing where Python or its numpy is not installed, another Error when the script fails.
+ */
 export function runNumpy(script: string, job: unknown): NumpyResult {
+  isThere ??= spawnSync('python3', ['-c', 'import numpy']).status === 0
+  if (!isThere) throw new NumpyMissing('Python has no numpy here.')
   const env = { ...process.env }
   // These settings hold the matrix library below what the machine can do.
   delete env.OPENBLAS_CORETYPE

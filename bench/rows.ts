@@ -7,3 +7,9 @@ export interface BenchRow {
   /** Largest absolute difference between the two results, in the result's own unit. */
   readonly largestDifference: number
 }
+
+/** One benchmark: rows to compare, or a report that it prints itself. */
+export interface Benchmark {
+  readonly name: string
+  run(): Promise<BenchRow[]> | void
+}
