@@ -5,6 +5,7 @@ import { defineConfig } from 'vite'
 const PROGRAMS = {
   main: 'server/main.ts',
   'reading/worker': 'server/reading/worker.ts',
+  'jobs/checksWorker': 'server/jobs/checksWorker.ts',
 }
 
 export default defineConfig({

@@ -1,5 +1,5 @@
 import type { Severity } from '../../shared/contract/findings.js'
-import type { Scan as ScanReply, SourceFile as SourceFileReply } from '../../shared/contract/scans.js'
+import { Conditions, type Scan as ScanReply, type SourceFile as SourceFileReply } from '../../shared/contract/scans.js'
 import type { Scan } from '../database/entities/Scan.js'
 import type { SourceFile } from '../database/entities/SourceFile.js'
 
@@ -7,6 +7,7 @@ import type { SourceFile } from '../database/entities/SourceFile.js'
 export interface ScanStanding {
   inUse: boolean
   worstFinding: Severity | null
+  unansweredRejects: number
 }
 
 /** Needs the relations `sourceFile`, `uploadedBy` and `decidedBy`. */
@@ -20,7 +21,8 @@ export function presentScan(scan: Scan, standing: ScanStanding): ScanReply {
     label: scan.label,
     points: scan.points,
     rangeNm: [scan.firstNm, scan.lastNm],
-    conditions: scan.conditions,
+    // Conditions that were written down before a field was there get its default.
+    conditions: Conditions.parse(scan.conditions),
     state: scan.state,
     decision:
       scan.decidedBy && scan.decidedAt
@@ -32,6 +34,10 @@ export function presentScan(scan: Scan, standing: ScanStanding): ScanReply {
         : null,
     inUse: standing.inUse,
     worstFinding: standing.worstFinding,
+    unansweredRejects: standing.unansweredRejects,
+    origin: scan.origin,
+    parentScanIds: scan.parentScanIds,
+    biasSeriesId: scan.biasSeriesId,
     sourceFile: { id: scan.sourceFile.id, name: scan.sourceFile.name, sha256: scan.sourceFile.sha256 },
     mapping: scan.mapping,
     uploadedAt: scan.uploadedAt.toISOString(),

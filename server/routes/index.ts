@@ -6,6 +6,7 @@ import { devicesRouter } from './devices.js'
 import { matchingRouter } from './matching.js'
 import { peopleRouter } from './people.js'
 import { projectsRouter } from './projects.js'
+import { scanChecksRouter } from './scanChecks.js'
 import { scansRouter } from './scans.js'
 import { sourceFilesRouter } from './sourceFiles.js'
 import { spectraRouter } from './spectra.js'
@@ -18,6 +19,7 @@ export const ROUTERS: readonly MakeRouter[] = [
   devicesRouter,
   matchingRouter,
   scansRouter,
+  scanChecksRouter,
   sourceFilesRouter,
   spectraRouter,
   administrationRouter,

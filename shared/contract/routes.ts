@@ -1,9 +1,11 @@
 import * as account from './account.js'
 import * as administration from './administration.js'
 import * as devices from './devices.js'
+import * as jobs from './jobs.js'
 import * as matching from './matching.js'
 import * as projects from './projects.js'
 import type { Route } from './route.js'
+import * as scanChecks from './scanChecks.js'
 import * as scans from './scans.js'
 import * as spectra from './spectra.js'
 
@@ -14,6 +16,14 @@ function routesOf(module: Record<string, unknown>): Route[] {
 }
 
 /** Every route of the API, in the order of the document. A new contract file is one line here. */
-export const ROUTES: readonly Route[] = [account, projects, devices, matching, scans, spectra, administration].flatMap(
-  routesOf,
-)
+export const ROUTES: readonly Route[] = [
+  account,
+  projects,
+  devices,
+  matching,
+  scans,
+  scanChecks,
+  jobs,
+  spectra,
+  administration,
+].flatMap(routesOf)

@@ -156,6 +156,15 @@ export const Conditions = z
     operator: ShortText.default(''),
     instrument: ShortText.default(''),
     measuredOn: CalendarDate.nullable().default(null),
+    filterChangesNm: z
+      .array(Positive.max(20_000))
+      .max(12)
+      .default([])
+      .meta({ description: 'Wavelengths at which an order-sorting filter comes in' }),
+    jvJscMaCm2: Positive.max(1000)
+      .nullable()
+      .default(null)
+      .meta({ description: 'Jsc of the illuminated J–V of the same device, under AM1.5G' }),
     note: LongText.default(''),
   })
   .meta({ id: 'Conditions' })
@@ -168,6 +177,13 @@ export type ScanState = z.infer<typeof ScanState>
 export const SCAN_QUANTITIES = ['eqe', 'reflectance'] as const
 export const ScanQuantity = z.enum(SCAN_QUANTITIES)
 export type ScanQuantity = z.infer<typeof ScanQuantity>
+
+export const SCAN_ORIGINS = ['eqe-file', 'raw', 'corrected'] as const
+export const ScanOrigin = z.enum(SCAN_ORIGINS).meta({
+  id: 'ScanOrigin',
+  description: 'Read from a file as it stands, reduced from raw passes, or unmixed from other scans',
+})
+export type ScanOrigin = z.infer<typeof ScanOrigin>
 
 export const Scan = z
   .object({
@@ -184,6 +200,10 @@ export const Scan = z
     decision: z.object({ by: PersonReference, at: Timestamp, reason: z.string() }).nullable(),
     inUse: z.boolean().meta({ description: 'The scan that stands for its junction in the results' }),
     worstFinding: Severity.nullable(),
+    unansweredRejects: z.int().meta({ description: 'Above zero the scan cannot be used in a report' }),
+    origin: ScanOrigin,
+    parentScanIds: z.array(Id).meta({ description: 'The scans that a corrected one was made of' }),
+    biasSeriesId: Id.nullable(),
     sourceFile: z.object({ id: Id, name: z.string(), sha256: z.string() }),
     mapping: ReadingMapping,
     uploadedAt: Timestamp,

@@ -31,6 +31,8 @@ export const SAMPLE_BODIES: Record<string, unknown> = {
   },
   updateConditions: { version: 1, label: '', conditions: {} },
   decideScan: { version: 1, state: 'accepted' },
+  answerFinding: { kind: 'accepted', reason: 'Known and harmless here.' },
+  updateThresholds: { version: 0, settings: {} },
   createSpectrum: { sourceFileId: uuid(), name: 'Lamp', mapping },
   createAccount: { name: 'New person', email: 'new.person@lab.example' },
   updateAccountByAdministrator: { disabled: false },

@@ -1,6 +1,7 @@
 import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn, type Relation } from 'typeorm'
-import type { Conditions, ReadingMapping, ScanQuantity, ScanState } from '../../../shared/contract/scans.js'
+import type { Conditions, ReadingMapping, ScanOrigin, ScanQuantity, ScanState } from '../../../shared/contract/scans.js'
 import { float64Blob, jsonColumn } from '../transformers.js'
+import type { BiasSeries } from './BiasSeries.js'
 import type { Device } from './Device.js'
 import type { Junction } from './Junction.js'
 import type { Project } from './Project.js'
@@ -74,6 +75,20 @@ export class Scan {
 
   @Column('longtext', { transformer: jsonColumn<Conditions>() })
   conditions: Conditions
+
+  @Column('varchar', { length: 20 })
+  origin: ScanOrigin
+
+  /** Of a corrected scan: what it was made of. */
+  @Column('longtext', { transformer: jsonColumn<string[]>() })
+  parentScanIds: string[]
+
+  @Column('uuid', { nullable: true })
+  biasSeriesId: string | null
+
+  @ManyToOne('BiasSeries', { onDelete: 'SET NULL', nullable: true })
+  @JoinColumn({ name: 'biasSeriesId', foreignKeyConstraintName: 'scan_bias_series_exists' })
+  biasSeries: Relation<BiasSeries> | null
 
   @Column('varchar', { length: 20 })
   state: ScanState

@@ -1,14 +1,21 @@
 import { AuditEvent } from './AuditEvent.js'
+import { BenchItem } from './BenchItem.js'
+import { BiasSeries } from './BiasSeries.js'
 import { Device } from './Device.js'
+import { Finding } from './Finding.js'
 import { Invitation } from './Invitation.js'
+import { Job } from './Job.js'
 import { Junction } from './Junction.js'
 import { Layer } from './Layer.js'
 import { Membership } from './Membership.js'
 import { OutboxMail } from './OutboxMail.js'
 import { PasswordReset } from './PasswordReset.js'
 import { Project } from './Project.js'
+import { ProjectThresholds } from './ProjectThresholds.js'
+import { RawMeasurement } from './RawMeasurement.js'
 import { ReadingMemory } from './ReadingMemory.js'
 import { Scan } from './Scan.js'
+import { ScanCheck } from './ScanCheck.js'
 import { SessionRecord } from './SessionRecord.js'
 import { SourceFile } from './SourceFile.js'
 import { Spectrum } from './Spectrum.js'
@@ -31,4 +38,11 @@ export const ENTITIES = [
   ReadingMemory,
   Scan,
   Spectrum,
+  BiasSeries,
+  Finding,
+  ScanCheck,
+  ProjectThresholds,
+  Job,
+  BenchItem,
+  RawMeasurement,
 ]

@@ -52,6 +52,12 @@ export async function devicesOfProjectById(
   return withStacks(work, await work.findBy(Device, { id: In(deviceIds), projectId, deletedAt: IsNull() }))
 }
 
+/** Locks the devices' rows, in the order of their ids, before anything is added to them. */
+export async function lockDevices(work: Work, deviceIds: readonly string[]): Promise<void> {
+  for (const id of [...deviceIds].sort())
+    await work.findOne(Device, { select: { id: true }, where: { id }, lock: { mode: 'pessimistic_write' } })
+}
+
 /** The device and a lock on its row until the transaction ends; a deleted one too when `deletedSince` is given. */
 export async function lockedDevice(
   work: Work,

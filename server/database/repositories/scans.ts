@@ -128,7 +128,10 @@ export async function hasScans(work: Work, sourceFileId: string): Promise<boolea
   return work.existsBy(Scan, { sourceFileId })
 }
 
-export type NewScanRow = Omit<Scan, 'project' | 'device' | 'junction' | 'sourceFile' | 'uploadedBy' | 'decidedBy'>
+export type NewScanRow = Omit<
+  Scan,
+  'project' | 'device' | 'junction' | 'sourceFile' | 'uploadedBy' | 'decidedBy' | 'biasSeries'
+>
 
 export async function insertScans(work: Work, scans: NewScanRow[]): Promise<void> {
   await work.insert(Scan, scans)

@@ -6,6 +6,7 @@ import type { Database, Work } from '../../database/transaction.js'
 import { presentDevice } from '../../presenters/device.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
+import { recheckDevice } from '../checks/recheckDevice.js'
 import { requireMember } from '../rights.js'
 import { requireCurrentVersion } from '../staleVersion.js'
 import { requireKnownJunctions, requireSoundStack } from './checkStack.js'
@@ -33,6 +34,7 @@ export async function updateDevice(
       updatedAt: new Date(),
     }
     await saveDevice(work, device)
+    await recheckDevice(work, projectId, deviceId)
     await recordAudit(work, {
       actor,
       projectId,

@@ -1,17 +1,25 @@
+import type { Finding } from '../../../shared/contract/findings.js'
 import type { JunctionCurrent, Matching } from '../../../shared/contract/matching.js'
 import { matching, type SeriesMatching } from '../../../shared/physics/matching.js'
+import { worstOf } from '../checks/findingsOfScans.js'
 import type { ChosenSpectrum } from './chosenSpectrum.js'
 import { currentOfScan, NOTHING_MEASURED } from './currentOfScan.js'
-import { findingsOf, worstOf } from './findings.js'
 import type { MeasuredDevice, MeasuredJunction } from './measuredDevice.js'
 
-/** What a device's currents say under a spectrum. Pure: the same inputs give the same result, here and in a report. */
-export function computeMatching(device: MeasuredDevice, chosen: ChosenSpectrum): Matching {
+/**
+ * What a device's currents say under a spectrum. Pure: the same inputs give the same result, here and in a report.
+ * @param found what the checks found, by scan; only that on the scans in use is shown.
+ */
+export function computeMatching(
+  device: MeasuredDevice,
+  chosen: ChosenSpectrum,
+  found: ReadonlyMap<string, readonly Finding[]>,
+): Matching {
   const currents = device.junctions.map((junction) => currentOf(junction, chosen))
   const wiring = device.terminals === '4-terminal' ? 'independent' : 'series'
   const missing = device.junctions.flatMap((junction, i) => missingSentence(junction, currents[i]!.jscMaCm2))
   const series = wiring === 'series' && missing.length === 0 ? seriesMatching(currents) : null
-  const findings = findingsOf(device, chosen)
+  const findings = device.junctions.flatMap(({ scan }) => (scan ? (found.get(scan.id) ?? []) : []))
   return {
     deviceId: device.id,
     spectrum: chosen.used,

@@ -17,12 +17,12 @@ export const NOTHING_MEASURED: ScanCurrent = {
   gap: null,
 }
 
-/** A scan's curve never changes, nor does the one behind a spectrum's id: what this process integrated stays right. */
+/** A version of a scan has one curve, and so has a spectrum's id: what this process integrated stays right. */
 const integrated = new BoundedMemory<ScanCurrent>(5000)
 
 /** What one scan alone says under a spectrum. */
 export function currentOfScan(scan: MeasuredScan, chosen: ChosenSpectrum): ScanCurrent {
-  const key = `${scan.id} ${spectrumKey(chosen)}`
+  const key = `${scan.id} ${scan.version} ${spectrumKey(chosen)}`
   return integrated.get(key) ?? integrated.keep(key, integrate(scan, chosen))
 }
 

@@ -5,7 +5,7 @@ import type { Curve } from '../../../shared/physics/curve.js'
 /** A scan as the engine needs it. */
 export interface MeasuredScan {
   id: string
-  /** Of the scan's conditions; the curve never changes. */
+  /** Counts every change of conditions, decision and, for a raw scan, factors. */
   version: number
   state: ScanState
   conditions: Conditions
@@ -26,4 +26,9 @@ export interface MeasuredDevice {
   terminals: Terminals
   junctions: MeasuredJunction[]
   reflectance: MeasuredScan | null
+}
+
+/** The EQE scans in use of these devices. */
+export function scansMeasured(devices: readonly MeasuredDevice[]): string[] {
+  return devices.flatMap((device) => device.junctions.flatMap(({ scan }) => (scan ? [scan.id] : [])))
 }

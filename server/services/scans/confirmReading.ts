@@ -3,7 +3,7 @@ import { ApiError } from '../../../shared/contract/errors.js'
 import type { BodyOf } from '../../../shared/contract/route.js'
 import type { Scan as ScanReply, confirmReading as route } from '../../../shared/contract/scans.js'
 import type { SourceFile } from '../../database/entities/SourceFile.js'
-import { devicesOfProjectById, type DeviceWithStack } from '../../database/repositories/devices.js'
+import { devicesOfProjectById, lockDevices, type DeviceWithStack } from '../../database/repositories/devices.js'
 import { rememberMapping } from '../../database/repositories/readingMemories.js'
 import { insertScans, scansById, scansOfSourceFiles, type NewScanRow } from '../../database/repositories/scans.js'
 import { bytesOfSourceFile, lockSourceFile, refreshSourceFileState } from '../../database/repositories/sourceFiles.js'
@@ -11,6 +11,7 @@ import type { Database, Work } from '../../database/transaction.js'
 import type { ReadingResult } from '../../reading/readingResult.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
+import { recheckDevices } from '../checks/recheckDevice.js'
 import { requireMember } from '../rights.js'
 import { confirmationErrors } from './confirmationErrors.js'
 import { findSourceFile } from './findSourceFile.js'
@@ -36,9 +37,9 @@ export async function confirmReading(
     await requireMember(work, actor, projectId, 'edit-scans')
     if (!(await lockSourceFile(work, projectId, sourceFileId)))
       throw new ApiError('NOT_FOUND', { what: 'file' }, `${file.name} was discarded in the meantime.`)
-    const devices = await devicesOfProjectById(work, projectId, [
-      ...new Set(confirmation.scans.map((scan) => scan.deviceId)),
-    ])
+    const deviceIds = [...new Set(confirmation.scans.map((scan) => scan.deviceId))].sort()
+    await lockDevices(work, deviceIds)
+    const devices = await devicesOfProjectById(work, projectId, deviceIds)
     const errors = confirmationErrors(confirmation, devices, await scansOfSourceFiles(work, [file.id]))
     if (errors.length > 0)
       throw new ApiError('INPUT_INVALID', { errors }, errors.map((error) => error.message).join(' '))
@@ -46,6 +47,7 @@ export async function confirmReading(
     await insertScans(work, rows)
     await refreshSourceFileState(work, file.id)
     await rememberMapping(work, projectId, reading.shape, confirmation.mapping, new Date())
+    await recheckDevices(work, projectId, deviceIds)
     await recordConfirmation(work, actor, file, rows, devices)
     const saved = await scansById(
       work,
@@ -80,6 +82,9 @@ function scanRows(
       values,
       mapping,
       conditions,
+      origin: 'eqe-file' as const,
+      parentScanIds: [],
+      biasSeriesId: null,
       state: 'checked' as const,
       decidedById: null,
       decidedAt: null,

@@ -4,6 +4,7 @@ import { lockedScan, saveScanDecision } from '../../database/repositories/scans.
 import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
+import { recheckDevice } from '../checks/recheckDevice.js'
 import { requireMember } from '../rights.js'
 import { requireCurrentVersion } from '../staleVersion.js'
 import { foundScan } from './findScan.js'
@@ -41,6 +42,7 @@ export async function decideScan(
       version: scan.version + 1,
     }
     await saveScanDecision(work, { id: scanId, ...decision })
+    await recheckDevice(work, projectId, scan.deviceId)
     const because = reason === '' ? '' : `: ${reason}`
     await recordAudit(work, {
       actor,

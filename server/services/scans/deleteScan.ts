@@ -3,6 +3,7 @@ import { refreshSourceFileState } from '../../database/repositories/sourceFiles.
 import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
+import { recheckDevice } from '../checks/recheckDevice.js'
 import { requireMember } from '../rights.js'
 import { foundScan } from './findScan.js'
 
@@ -13,6 +14,7 @@ export async function deleteScan(database: Database, actor: Actor, projectId: st
     const scan = foundScan(await lockedScan(work, projectId, scanId))
     await markScanDeleted(work, scanId, new Date())
     await refreshSourceFileState(work, scan.sourceFileId)
+    await recheckDevice(work, projectId, scan.deviceId)
     await recordAudit(work, {
       actor,
       projectId,

@@ -1,32 +1,31 @@
 import type { Scan as ScanReply } from '../../../shared/contract/scans.js'
 import type { Scan } from '../../database/entities/Scan.js'
-import { devicesById } from '../../database/repositories/devices.js'
+import { scanHeadsOfDevices } from '../../database/repositories/scans.js'
 import type { Work } from '../../database/transaction.js'
 import { presentScan, type ScanStanding } from '../../presenters/scan.js'
-import { findingsOfScan, worstOf } from '../matching/findings.js'
-import type { MeasuredDevice } from '../matching/measuredDevice.js'
-import { measureDevices, measuredScan } from '../matching/measureDevices.js'
-import { standardSpectrum } from '../spectra/chooseSpectrum.js'
+import { findingsOfScans, unansweredRejects, worstOf } from '../checks/findingsOfScans.js'
+import { scansInUse } from '../matching/scansInUse.js'
 
-/** The scans with what their rows do not know: whether they are in use, and the worst finding, under AM1.5G. */
+/** The scans with what their rows do not know: whether they are in use, and what the checks found. */
 export async function presentScans(work: Work, scans: readonly Scan[]): Promise<ScanReply[]> {
-  const devices = await devicesById(work, [...new Set(scans.map((scan) => scan.deviceId))])
-  const measured = new Map(
-    (await measureDevices(work, devices)).map(({ measured: device }) => [device.id, device] as const),
+  const heads = await scanHeadsOfDevices(work, [...new Set(scans.map((scan) => scan.deviceId))])
+  const inUse = new Set(scansInUse(heads).map((head) => head.id))
+  const found = await findingsOfScans(
+    work,
+    scans.map((scan) => scan.id),
   )
-  return scans.map((scan) => presentScan(scan, standingOf(scan, measured.get(scan.deviceId))))
+  return scans.map((scan) => {
+    const findings = found.get(scan.id) ?? []
+    const standing: ScanStanding = {
+      inUse: inUse.has(scan.id),
+      worstFinding: worstOf(findings),
+      unansweredRejects: unansweredRejects(findings).length,
+    }
+    return presentScan(scan, standing)
+  })
 }
 
 export async function presentOneScan(work: Work, scan: Scan): Promise<ScanReply> {
   const [reply] = await presentScans(work, [scan])
   return reply!
-}
-
-function standingOf(scan: Scan, device: MeasuredDevice | undefined): ScanStanding {
-  const junction = device?.junctions.find((one) => one.id === scan.junctionId)
-  if (!device || !junction) return { inUse: device?.reflectance?.id === scan.id, worstFinding: null }
-  return {
-    inUse: junction.scan?.id === scan.id,
-    worstFinding: worstOf(findingsOfScan(measuredScan(scan), junction.position, device, standardSpectrum())),
-  }
 }

@@ -6,6 +6,7 @@ import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
 import { restorableSince } from '../deletion.js'
+import { recheckDevice } from '../checks/recheckDevice.js'
 import { requireMember } from '../rights.js'
 import { foundScan } from './findScan.js'
 import { presentOneScan } from './presentScans.js'
@@ -33,6 +34,7 @@ export async function restoreScan(
       )
     await markScanDeleted(work, scanId, null)
     await refreshSourceFileState(work, scan.sourceFileId)
+    await recheckDevice(work, projectId, scan.deviceId)
     await recordAudit(work, {
       actor,
       projectId,

@@ -4,6 +4,7 @@ import { lockedScan, saveScanConditions } from '../../database/repositories/scan
 import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
 import { recordAudit } from '../audit.js'
+import { recheckDevice } from '../checks/recheckDevice.js'
 import { requireMember } from '../rights.js'
 import { requireCurrentVersion } from '../staleVersion.js'
 import { foundScan } from './findScan.js'
@@ -22,6 +23,7 @@ export async function updateConditions(
     requireCurrentVersion(version, await presentOneScan(work, scan), `the scan ${scan.label}`)
     const saved = { ...scan, label, conditions, version: scan.version + 1 }
     await saveScanConditions(work, saved)
+    await recheckDevice(work, projectId, scan.deviceId)
     await recordAudit(work, {
       actor,
       projectId,
