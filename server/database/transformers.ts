@@ -1,4 +1,5 @@
 import type { ValueTransformer } from 'typeorm'
+import type { z } from 'zod'
 
 /** Curves are stored as little-endian Float64, 8 bytes a value, whatever the machine's own order. */
 export const float64Blob: ValueTransformer = {
@@ -23,6 +24,15 @@ export function jsonColumn<Value>(): ValueTransformer {
   return {
     to: (value: Value | null | undefined) => (value === null || value === undefined ? value : JSON.stringify(value)),
     from: (text: string | null) => (text === null ? null : (JSON.parse(text) as Value)),
+  }
+}
+
+/** JSON text that may be older than its schema: fields that were not there when it was written get their defaults. */
+export function parsedJsonColumn<Schema extends z.ZodType>(schema: Schema): ValueTransformer {
+  return {
+    to: (value: z.output<Schema> | null | undefined) =>
+      value === null || value === undefined ? value : JSON.stringify(value),
+    from: (text: string | null) => (text === null ? null : schema.parse(JSON.parse(text))),
   }
 }
 

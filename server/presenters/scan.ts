@@ -1,5 +1,5 @@
 import type { Severity } from '../../shared/contract/findings.js'
-import { Conditions, type Scan as ScanReply, type SourceFile as SourceFileReply } from '../../shared/contract/scans.js'
+import type { Scan as ScanReply, SourceFile as SourceFileReply } from '../../shared/contract/scans.js'
 import type { Scan } from '../database/entities/Scan.js'
 import type { SourceFile } from '../database/entities/SourceFile.js'
 
@@ -21,8 +21,7 @@ export function presentScan(scan: Scan, standing: ScanStanding): ScanReply {
     label: scan.label,
     points: scan.points,
     rangeNm: [scan.firstNm, scan.lastNm],
-    // Conditions that were written down before a field was there get its default.
-    conditions: Conditions.parse(scan.conditions),
+    conditions: scan.conditions,
     state: scan.state,
     decision:
       scan.decidedBy && scan.decidedAt

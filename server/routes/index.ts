@@ -2,10 +2,13 @@ import type { MakeRouter } from '../app.js'
 import { accountRouter } from './account.js'
 import { administrationRouter } from './administration.js'
 import { apiDocumentRouter } from './apiDocument.js'
+import { benchRouter } from './bench.js'
 import { devicesRouter } from './devices.js'
 import { matchingRouter } from './matching.js'
+import { measuringRouter } from './measuring.js'
 import { peopleRouter } from './people.js'
 import { projectsRouter } from './projects.js'
+import { rawPassesRouter } from './rawPasses.js'
 import { scanChecksRouter } from './scanChecks.js'
 import { scansRouter } from './scans.js'
 import { sourceFilesRouter } from './sourceFiles.js'
@@ -20,6 +23,9 @@ export const ROUTERS: readonly MakeRouter[] = [
   matchingRouter,
   scansRouter,
   scanChecksRouter,
+  rawPassesRouter,
+  measuringRouter,
+  benchRouter,
   sourceFilesRouter,
   spectraRouter,
   administrationRouter,

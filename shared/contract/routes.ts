@@ -1,13 +1,18 @@
 import * as account from './account.js'
 import * as administration from './administration.js'
+import * as bench from './bench.js'
+import * as biasPlan from './biasPlan.js'
+import * as biasSeries from './biasSeries.js'
 import * as devices from './devices.js'
 import * as jobs from './jobs.js'
 import * as matching from './matching.js'
 import * as projects from './projects.js'
+import * as rawPasses from './rawPasses.js'
 import type { Route } from './route.js'
 import * as scanChecks from './scanChecks.js'
 import * as scans from './scans.js'
 import * as spectra from './spectra.js'
+import * as unmixing from './unmixing.js'
 
 function routesOf(module: Record<string, unknown>): Route[] {
   return Object.values(module).filter(
@@ -23,6 +28,11 @@ export const ROUTES: readonly Route[] = [
   matching,
   scans,
   scanChecks,
+  biasSeries,
+  rawPasses,
+  unmixing,
+  biasPlan,
+  bench,
   jobs,
   spectra,
   administration,

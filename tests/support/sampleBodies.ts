@@ -7,6 +7,10 @@ const mapping = {
   series: [{ column: 1, quantity: 'eqe', unit: 'fraction', label: 'top' }],
 }
 const device = { name: 'T-1', terminals: '2-terminal', junctions: [{ label: 'top' }, { label: 'bottom' }] }
+const pass = { sourceFileId: uuid(), wavelength: { column: 0 }, signal: { magnitude: 1 }, gain: { shuntOhm: 50 } }
+const reduction = { device: pass, reference: pass, detectorId: uuid() }
+const led = { kind: 'led', centreNm: 940, fwhmNm: 50, highestIrradianceWM2: 200 }
+const series = { name: 'Series', varied: 'irradiance', scanIds: [uuid(), uuid()] }
 const password = 'a password that is long enough'
 
 /** A body that every route with a body takes, by the route's id; what it names does not exist. */
@@ -33,6 +37,19 @@ export const SAMPLE_BODIES: Record<string, unknown> = {
   decideScan: { version: 1, state: 'accepted' },
   answerFinding: { kind: 'accepted', reason: 'Known and harmless here.' },
   updateThresholds: { version: 0, settings: {} },
+  createBiasSeries: series,
+  updateBiasSeries: { ...series, version: 1 },
+  previewRaw: { reduction },
+  createRawScan: { reduction, deviceId: uuid(), junctionId: uuid(), conditions: {} },
+  updateRawScan: { version: 1, reduction },
+  acceptUnmixing: { junctionId: uuid(), parentScanIds: [uuid(), uuid()] },
+  planBias: { junctionId: uuid() },
+  createSetUp: { name: 'Bench 1', content: {} },
+  updateSetUp: { version: 1, name: 'Bench 1', content: {} },
+  createLightSource: { name: 'LED 940 nm', content: led },
+  updateLightSource: { version: 1, name: 'LED 940 nm', content: led },
+  createDetector: { name: 'Photodiode', content: { sourceFileId: uuid(), mapping } },
+  updateDetector: { version: 1, name: 'Photodiode', content: { sourceFileId: uuid(), mapping } },
   createSpectrum: { sourceFileId: uuid(), name: 'Lamp', mapping },
   createAccount: { name: 'New person', email: 'new.person@lab.example' },
   updateAccountByAdministrator: { disabled: false },

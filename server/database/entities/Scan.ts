@@ -1,6 +1,12 @@
 import { Column, Entity, Index, JoinColumn, ManyToOne, PrimaryColumn, type Relation } from 'typeorm'
-import type { Conditions, ReadingMapping, ScanOrigin, ScanQuantity, ScanState } from '../../../shared/contract/scans.js'
-import { float64Blob, jsonColumn } from '../transformers.js'
+import {
+  Conditions,
+  type ReadingMapping,
+  type ScanOrigin,
+  type ScanQuantity,
+  type ScanState,
+} from '../../../shared/contract/scans.js'
+import { float64Blob, jsonColumn, parsedJsonColumn } from '../transformers.js'
 import type { BiasSeries } from './BiasSeries.js'
 import type { Device } from './Device.js'
 import type { Junction } from './Junction.js'
@@ -73,7 +79,7 @@ export class Scan {
   @Column('longtext', { transformer: jsonColumn<ReadingMapping>() })
   mapping: ReadingMapping
 
-  @Column('longtext', { transformer: jsonColumn<Conditions>() })
+  @Column('longtext', { transformer: parsedJsonColumn(Conditions) })
   conditions: Conditions
 
   @Column('varchar', { length: 20 })

@@ -144,6 +144,29 @@ export async function saveScanConditions(
   await work.update(Scan, { id }, { label, conditions, version })
 }
 
+/** A raw scan that was computed again. */
+export async function saveScanCurve(
+  work: Work,
+  {
+    id,
+    ...row
+  }: Pick<
+    Scan,
+    | 'id'
+    | 'sourceFileId'
+    | 'sourceColumn'
+    | 'mapping'
+    | 'points'
+    | 'firstNm'
+    | 'lastNm'
+    | 'wavelengthNm'
+    | 'values'
+    | 'version'
+  >,
+): Promise<void> {
+  await work.update(Scan, { id }, row)
+}
+
 export async function saveScanDecision(
   work: Work,
   { id, ...row }: Pick<Scan, 'id' | 'state' | 'decidedById' | 'decidedAt' | 'decisionReason' | 'version'>,

@@ -2,6 +2,8 @@ import { IsNull } from 'typeorm'
 import { isDuplicateKey } from '../databaseErrors.js'
 import type { Work } from '../transaction.js'
 import type { TimePosition } from './position.js'
+import { BenchItem } from '../entities/BenchItem.js'
+import { RawMeasurement } from '../entities/RawMeasurement.js'
 import { Scan } from '../entities/Scan.js'
 import { SourceFile } from '../entities/SourceFile.js'
 import { Spectrum } from '../entities/Spectrum.js'
@@ -78,14 +80,29 @@ export async function keepSourceFile(
   }
 }
 
-/** `read` as long as a scan or a spectrum rests on the file, `uploaded` otherwise. */
+/** `read` as long as a scan, a spectrum or a calibration rests on the file, `uploaded` otherwise. */
 export async function refreshSourceFileState(work: Work, sourceFileId: string): Promise<void> {
   const isUsed =
     (await work.existsBy(Scan, { sourceFileId, deletedAt: IsNull() })) ||
-    (await work.existsBy(Spectrum, { sourceFileId }))
+    (await work.existsBy(Spectrum, { sourceFileId })) ||
+    (await isCalibrationOrReference(work, sourceFileId))
   await work.update(SourceFile, { id: sourceFileId }, { state: isUsed ? 'read' : 'uploaded' })
 }
 
 export async function removeSourceFile(work: Work, sourceFileId: string): Promise<void> {
   await work.delete(SourceFile, { id: sourceFileId })
+}
+
+/** Whether a detector's calibration was read from the file, or it holds the reference pass of a raw scan. */
+export async function isCalibrationOrReference(work: Work, sourceFileId: string): Promise<boolean> {
+  const names = (path: string) => `JSON_VALUE(one.${path}) = :sourceFileId`
+  const isCalibration = await work
+    .createQueryBuilder(BenchItem, 'one')
+    .where(`one.kind = 'detector' AND ${names("content, '$.sourceFileId'")}`, { sourceFileId })
+    .getExists()
+  if (isCalibration) return true
+  return work
+    .createQueryBuilder(RawMeasurement, 'one')
+    .where(names("reduction, '$.reference.sourceFileId'"), { sourceFileId })
+    .getExists()
 }

@@ -1,6 +1,6 @@
 import { ApiError } from '../../../shared/contract/errors.js'
 import { hasScans } from '../../database/repositories/scans.js'
-import { lockSourceFile, removeSourceFile } from '../../database/repositories/sourceFiles.js'
+import { isCalibrationOrReference, lockSourceFile, removeSourceFile } from '../../database/repositories/sourceFiles.js'
 import { isSpectrumMadeOf } from '../../database/repositories/spectra.js'
 import type { Database } from '../../database/transaction.js'
 import type { Actor } from '../actor.js'
@@ -19,11 +19,15 @@ export async function deleteSourceFile(
     await requireMember(work, actor, projectId, 'edit-scans')
     await lockSourceFile(work, projectId, sourceFileId)
     const file = await findSourceFile(work, projectId, sourceFileId)
-    if ((await hasScans(work, sourceFileId)) || (await isSpectrumMadeOf(work, sourceFileId)))
+    const isUsed =
+      (await hasScans(work, sourceFileId)) ||
+      (await isSpectrumMadeOf(work, sourceFileId)) ||
+      (await isCalibrationOrReference(work, sourceFileId))
+    if (isUsed)
       throw new ApiError(
         'STATE_CONFLICT',
         { reason: 'file-in-use' },
-        `Scans or spectra were made of ${file.name}; the file stays with them.`,
+        `Scans, spectra or calibrations were made of ${file.name}; the file stays with them.`,
       )
     await removeSourceFile(work, sourceFileId)
     await recordAudit(work, {
