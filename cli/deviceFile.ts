@@ -1,7 +1,6 @@
-import { readFile } from 'node:fs/promises'
 import { dirname } from 'node:path'
 import { z } from 'zod'
-import { CommandError } from './commandError.js'
+import { readJsonFile } from './jsonFile.js'
 
 const Column = z.union([z.string().min(1), z.int().min(1, 'Columns count from 1.')])
 const Columns = z.strictObject({
@@ -21,6 +20,15 @@ const BiasSource = z.strictObject({
   fwhmNm: z.number().positive(),
   irradianceWM2: z.number().nonnegative(),
 })
+
+/** A light source for a bias plan. */
+const LightSource = z.strictObject({
+  name: z.string().min(1),
+  centreNm: z.number().positive(),
+  fwhmNm: z.number().positive(),
+  maxIrradianceWM2: z.number().positive(),
+})
+export type LightSource = z.infer<typeof LightSource>
 
 /** How a scan was taken; what is left out is not checked. */
 export const ScanConditions = z.strictObject({
@@ -57,7 +65,7 @@ const DeviceFile = z.strictObject({
     .default('2-terminal'),
   junctions: z.array(Junction).min(1, 'A device has at least one junction.').max(6),
   reflectance: ScanFile.optional(),
-  sources: z.array(z.looseObject({})).optional(),
+  sources: z.array(LightSource).default([]),
   layers: z.array(z.looseObject({})).optional(),
 })
 
@@ -76,26 +84,14 @@ export interface DescribedDevice {
   wiring: 'series' | 'independent'
   junctions: { name: string; scan: ScanReference; conditions: ScanConditions }[]
   reflectance: ScanReference | null
+  sources: LightSource[]
   /** Paths in the file are relative to this folder. */
   folder: string
 }
 
 /** Reads a device file. @throws CommandError: one sentence with the file, the place and the reason. */
 export async function readDeviceFile(path: string): Promise<DescribedDevice> {
-  const text = await readFile(path, 'utf8').catch((error: NodeJS.ErrnoException) => {
-    throw new CommandError(
-      error.code === 'ENOENT'
-        ? `${path}: there is no such file.`
-        : `${path} cannot be opened (${error.code ?? error.message}).`,
-    )
-  })
-  const parsed = DeviceFile.safeParse(parseJson(path, text))
-  if (!parsed.success) {
-    const issue = parsed.error.issues[0]!
-    const place = issue.path.length > 0 ? `at ${issue.path.join('.')}: ` : ''
-    throw new CommandError(`${path}, ${place}${issue.message}`)
-  }
-  const { device, terminals, junctions, reflectance } = parsed.data
+  const { device, terminals, junctions, reflectance, sources } = await readJsonFile(path, DeviceFile)
   return {
     name: device,
     wiring: /^\s*4[- ]terminal/i.test(terminals) ? 'independent' : 'series',
@@ -108,6 +104,7 @@ export async function readDeviceFile(path: string): Promise<DescribedDevice> {
       },
     })),
     reflectance: reflectance === undefined ? null : referenceOf(reflectance, {}),
+    sources,
     folder: dirname(path),
   }
 }
@@ -121,19 +118,5 @@ function referenceOf(scan: z.infer<typeof ScanFile>, outer: Reading): ScanRefere
     sheet: ('sheet' in inner ? inner.sheet : undefined) ?? outer.sheet,
     columns: { ...outer.columns, ...('columns' in inner ? inner.columns : {}) },
     units: { ...outer.units, ...('units' in inner ? inner.units : {}) },
-  }
-}
-
-/** JSON with the line of a mistake, which Node gives as a position or in words. */
-function parseJson(path: string, text: string): unknown {
-  try {
-    return JSON.parse(text)
-  } catch (error) {
-    const words = error instanceof Error ? error.message : String(error)
-    const position = /position (\d+)/.exec(words)?.[1]
-    const line = position === undefined ? text.split('\n').length : text.slice(0, Number(position)).split('\n').length
-    throw new CommandError(
-      `${path}, line ${line}: this is not valid JSON (${words.replace(/ in JSON at position.*$/, '')}).`,
-    )
   }
 }

@@ -1,9 +1,11 @@
 import { analyse } from './analyse.js'
+import { biasPlan } from './biasPlan.js'
 import type { Command, Output } from './command.js'
 import { CommandError } from './commandError.js'
+import { reduce } from './reduce.js'
 
 /** Every command. A new one is one file and one line here. */
-const COMMANDS: readonly Command[] = [analyse]
+const COMMANDS: readonly Command[] = [analyse, biasPlan, reduce]
 
 /** Runs a command line; gives the exit code. */
 export async function main(args: readonly string[], output: Output): Promise<number> {

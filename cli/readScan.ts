@@ -10,7 +10,7 @@ import type { ScanReference } from './deviceFile.js'
 
 type Wanted = 'eqe' | 'reflectance' | 'irradiance'
 
-const WAVELENGTH_UNITS: Record<string, WavelengthUnit> = {
+export const WAVELENGTH_UNITS: Record<string, WavelengthUnit> = {
   nm: 'nm',
   um: 'um',
   µm: 'um',
@@ -34,14 +34,7 @@ export async function readScan(
   wanted: Wanted,
   junctionName: string,
 ): Promise<Curve> {
-  const path = isAbsolute(reference.file) ? reference.file : join(folder, reference.file)
-  const bytes = await readFile(path).catch((error: NodeJS.ErrnoException) => {
-    throw new CommandError(
-      error.code === 'ENOENT'
-        ? `${path}: there is no such file.`
-        : `${path} cannot be opened (${error.code ?? error.message}).`,
-    )
-  })
+  const { path, bytes } = await openFile(folder, reference.file)
   try {
     const result = readAsAsked(path, bytes, reference, wanted)
     const scan = chooseScan(path, result.scans, wanted, junctionName)
@@ -51,6 +44,19 @@ export async function readScan(
     const { line } = error.details
     throw new CommandError(`${path}${line === undefined ? '' : `, line ${line}`}: ${error.message}`)
   }
+}
+
+/** A file named beside another. @throws CommandError when it cannot be opened. */
+export async function openFile(folder: string, file: string): Promise<{ path: string; bytes: Buffer }> {
+  const path = isAbsolute(file) ? file : join(folder, file)
+  const bytes = await readFile(path).catch((error: NodeJS.ErrnoException) => {
+    throw new CommandError(
+      error.code === 'ENOENT'
+        ? `${path}: there is no such file.`
+        : `${path} cannot be opened (${error.code ?? error.message}).`,
+    )
+  })
+  return { path, bytes }
 }
 
 function readAsAsked(path: string, bytes: Uint8Array, reference: ScanReference, wanted: Wanted): ReadingResult {
@@ -96,7 +102,11 @@ function single(path: string, result: ReadingResult): ReadingResult {
 }
 
 /** The tables of a file even where no mapping could be proposed; null for the index of the one that would be taken. */
-function proposal(bytes: Uint8Array, path: string, wanted: Wanted): { tables: FoundTable[]; taken: number | null } {
+export function proposal(
+  bytes: Uint8Array,
+  path: string,
+  wanted: Wanted,
+): { tables: FoundTable[]; taken: number | null } {
   try {
     const { tables, mapping } = readMeasurementFile(bytes, path, { expected: wanted })
     return { tables, taken: mapping.tableIndex }
@@ -107,7 +117,7 @@ function proposal(bytes: Uint8Array, path: string, wanted: Wanted): { tables: Fo
 }
 
 /** A column by its header, whatever its case, or by its number from 1. */
-function columnOf(path: string, table: FoundTable, wanted: string | number): FoundColumn {
+export function columnOf(path: string, table: FoundTable, wanted: string | number): FoundColumn {
   const column = findColumn(table, wanted)
   if (!column)
     throw new CommandError(
@@ -121,7 +131,7 @@ const findColumn = (table: FoundTable, wanted: string | number): FoundColumn | u
     ? table.columns.find((one) => one.index === wanted - 1)
     : table.columns.find((one) => one.header.trim().toLowerCase() === wanted.trim().toLowerCase())
 
-function unitOf<Unit>(path: string, text: string, units: Record<string, Unit>): Unit {
+export function unitOf<Unit>(path: string, text: string, units: Record<string, Unit>): Unit {
   const unit = units[text.trim().toLowerCase()]
   if (unit === undefined)
     throw new CommandError(`${path}: "${text}" is no unit known here; there are ${Object.keys(units).join(', ')}.`)
