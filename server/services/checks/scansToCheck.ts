@@ -62,7 +62,7 @@ export function scansToCheck(
           connection: device.terminals === '4-terminal' ? 'independent' : 'series',
           conditions: recordedConditions(scan.conditions),
           reflectance: reflectance && curveOf(reflectance),
-          shortCircuitCurrentMaCm2: scan.conditions.jvJscMaCm2,
+          shortCircuitCurrentMaCm2: jvJscOf(scan, ...standing),
           repeats: repeats.map(curveOf),
           inPhase: vector?.inPhaseV ?? null,
           quadrature: vector?.quadratureV ?? null,
@@ -95,6 +95,11 @@ function seriesOf(
     })),
     ownIndex: members.indexOf(own),
   }
+}
+
+/** The J–V is of the whole device: any scan that stands for a junction may have it written down. */
+function jvJscOf(...scans: readonly (CheckedScanRow | null)[]): number | null {
+  return scans.find((scan) => scan?.conditions.jvJscMaCm2 != null)?.conditions.jvJscMaCm2 ?? null
 }
 
 const keyOf = (scan: CheckedScanRow | null) => scan && `${scan.id} ${scan.version}`
