@@ -5,6 +5,7 @@ import { lockInstallation, numberOfUsers } from '../database/repositories/users.
 import type { Database } from '../database/transaction.js'
 import type { Actor } from '../services/actor.js'
 import { createProject } from '../services/projects/createProject.js'
+import { seedBench, seedBiasSeries } from './bench.js'
 import { inventedDevices, inventedScans, type InventedDevice } from './devices.js'
 import { decide, describe, makeScans, upload, type DescribedDevice } from './deeds.js'
 import { addDemonstrationPeople } from './people.js'
@@ -45,6 +46,7 @@ async function seedThicknessSplit(
       'Which thickness of the perovskite brings the two currents together? Four thicknesses from one run, and a repeat at 500 nm.',
   })
   const { designer, experimentalist } = people
+  await seedBench(database, experimentalist, projectId)
   for (const [index, device] of split.entries()) {
     const described = await describe(database, designer, projectId, device)
     const scans = await measure(database, experimentalist, described, index, SPLIT_MEASURED_ON)
@@ -53,6 +55,7 @@ async function seedThicknessSplit(
     else
       for (const scan of scans)
         await decide(database, experimentalist, scan, 'accepted', 'Well selected, repeat within 0.3 %.')
+    if (index === 0) await seedBiasSeries(database, experimentalist, described, scans[1]!, SPLIT_MEASURED_ON)
     if (index === 1) await excludeWideSpot(database, experimentalist, described)
   }
   await measure(database, experimentalist, await describe(database, designer, projectId, bad), 0, BAD_MEASURED_ON)

@@ -99,7 +99,11 @@ function seriesOf(
 
 /** The J–V is of the whole device: any scan that stands for a junction may have it written down. */
 function jvJscOf(...scans: readonly (CheckedScanRow | null)[]): number | null {
-  return scans.find((scan) => scan?.conditions.jvJscMaCm2 != null)?.conditions.jvJscMaCm2 ?? null
+  for (const scan of scans) {
+    const jsc = scan?.conditions.jvJscMaCm2 ?? null
+    if (jsc !== null) return jsc
+  }
+  return null
 }
 
 const keyOf = (scan: CheckedScanRow | null) => scan && `${scan.id} ${scan.version}`

@@ -10,6 +10,8 @@ import { databaseOf, type Database } from '../../../server/database/transaction.
 import { inventedDevices } from '../../../server/demonstration/devices.js'
 import { seedDemonstration } from '../../../server/demonstration/seed.js'
 import type { Actor } from '../../../server/services/actor.js'
+import { listBenchItems } from '../../../server/services/bench/benchItems.js'
+import { listBiasSeries } from '../../../server/services/biasSeries/biasSeries.js'
 import { listDevices } from '../../../server/services/matching/listDevices.js'
 import { listProjects } from '../../../server/services/projects/listProjects.js'
 import { listScans } from '../../../server/services/scans/listScans.js'
@@ -79,6 +81,24 @@ test('the bad device has findings of the highest severity, the good ones none of
     expect([device.name, matching.findings]).toEqual([device.name, []])
 })
 
+test('the bad device has the three faults that were made, and no others', async () => {
+  const bad = (await devicesOf('thickness')).find(({ device }) => device.name.startsWith('Repeat'))!
+  const found = bad.matching.findings.map(({ check, junctionPosition }) => `${check} ${junctionPosition}`).sort()
+  expect(found).toEqual(['bias-light-too-weak 1', 'chopper-near-mains 1', 'chopper-near-mains 2', 'leakage 2'])
+})
+
+test('the bench has sources, a detector and a set-up, and the bias series shows its plateau', async () => {
+  const projectId = projectNamed('thickness')
+  const sources = await listBenchItems(database, designer, projectId, 'light-source')
+  expect(sources.items.map(({ name }) => name)).toEqual(['LED 470 nm', 'LED 625 nm', 'LED 850 nm', 'LED 940 nm'])
+  const [setUp] = (await listBenchItems(database, designer, projectId, 'set-up')).items
+  expect(setUp!.content).toMatchObject({ referenceDetector: 'Silicon photodiode S-07', chopperHz: 133 })
+  const [series] = (await listBiasSeries(database, designer, projectId, undefined)).items
+  expect(series!.steps.map(({ level }) => level)).toEqual([15, 50, 110, 200])
+  expect(series!.plateau).not.toBeNull()
+  expect(series!.steps.at(-1)!.isOnPlateau).toBe(true)
+})
+
 test('the triple shows three currents with the germanium far above', async () => {
   const [triple] = await devicesOf('triple')
   expect(triple!.matching.junctions).toHaveLength(3)
@@ -97,7 +117,7 @@ test('scans carry conditions and decisions, and one file waits to be confirmed',
   expect(items.filter((scan) => scan.quantity === 'eqe' && scan.conditions.biasLight.length === 0)).toEqual([])
   const waiting = await listSourceFiles(database, designer, projectId, { limit: 200, state: 'uploaded' })
   expect(waiting.items.map((file) => file.name)).toEqual(['FT-24-04_Top_second-pass.csv'])
-  expect(await dataSource.manager.count(SourceFile)).toBe(14)
+  expect(await dataSource.manager.count(SourceFile)).toBe(18)
 })
 
 test('a database with people in it is left alone', async () => {
