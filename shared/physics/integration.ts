@@ -30,40 +30,52 @@ interface RunningIntegral {
   readonly values: number[]
 }
 
-/** The one pass over the union grid. `running` is filled with every point of it, unless null; empty without overlap. */
+/**
+ * The one pass over the union grid: interval by interval of the curve with fewer points, and inside it over the whole
+ * intervals of the other, which need no interpolation of their own. `running` is filled with every point of the union,
+ * unless null; empty without overlap. The sixth of the formula is taken at the end.
+ */
 function walkProduct(a: Curve, b: Curve, fromNm: number, toNm: number, running: RunningIntegral | null): number {
-  const { wavelengthNm: ax, values: ay } = a
-  const { wavelengthNm: bx, values: by } = b
-  const lastA = ax.length - 2
-  const lastB = bx.length - 2
-  const low = Math.max(ax[0]!, bx[0]!, fromNm)
-  const high = Math.min(ax[lastA + 1]!, bx[lastB + 1]!, toNm)
+  const [coarse, fine] = a.values.length <= b.values.length ? [a, b] : [b, a]
+  const { wavelengthNm: cx, values: cy } = coarse
+  const { wavelengthNm: fx, values: fy } = fine
+  const lastC = cx.length - 2
+  const lastF = fx.length - 2
+  const low = Math.max(cx[0]!, fx[0]!, fromNm)
+  const high = Math.min(cx[lastC + 1]!, fx[lastF + 1]!, toNm)
   if (!(low < high)) return 0
-  let i = Math.min(indexAtOrBelow(ax, low), lastA)
-  let j = Math.min(indexAtOrBelow(bx, low), lastB)
-  let slopeA = slopeOf(ax, ay, i)
-  let slopeB = slopeOf(bx, by, j)
+  let i = Math.min(indexAtOrBelow(cx, low), lastC)
+  let j = Math.min(indexAtOrBelow(fx, low), lastF)
   let x0 = low
-  let a0 = ay[i]! + slopeA * (low - ax[i]!)
-  let b0 = by[j]! + slopeB * (low - bx[j]!)
-  let sum = 0
+  let c0 = cy[i]! + slopeOf(cx, cy, i) * (low - cx[i]!)
+  let f0 = fy[j]! + slopeOf(fx, fy, j) * (low - fx[j]!)
+  let sixfold = 0
   record(running, low, 0)
-  while (x0 < high) {
-    const endA = ax[i + 1]!
-    const endB = bx[j + 1]!
-    const end = endA < endB ? endA : endB
-    const x1 = end < high ? end : high
-    const a1 = x1 === endA ? ay[i + 1]! : ay[i]! + slopeA * (x1 - ax[i]!)
-    const b1 = x1 === endB ? by[j + 1]! : by[j]! + slopeB * (x1 - bx[j]!)
-    sum += ((x1 - x0) / 6) * (a0 * (2 * b0 + b1) + a1 * (b0 + 2 * b1))
-    record(running, x1, sum)
-    if (x1 === endA && i < lastA) slopeA = slopeOf(ax, ay, ++i)
-    if (x1 === endB && j < lastB) slopeB = slopeOf(bx, by, ++j)
-    x0 = x1
-    a0 = a1
-    b0 = b1
+  for (; x0 < high; i++) {
+    const startC = cx[i]!
+    const startValueC = cy[i]!
+    const endC = cx[i + 1]!
+    const end = endC < high ? endC : high
+    const slopeC = slopeOf(cx, cy, i)
+    for (let x1 = fx[j + 1]!; x1 < end; x1 = fx[++j + 1]!) {
+      const c1 = startValueC + slopeC * (x1 - startC)
+      const f1 = fy[j + 1]!
+      sixfold += (x1 - x0) * (c0 * (2 * f0 + f1) + c1 * (f0 + 2 * f1))
+      record(running, x1, sixfold / 6)
+      x0 = x1
+      c0 = c1
+      f0 = f1
+    }
+    const c1 = end === endC ? cy[i + 1]! : startValueC + slopeC * (end - startC)
+    const f1 = end === fx[j + 1]! ? fy[j + 1]! : fy[j]! + slopeOf(fx, fy, j) * (end - fx[j]!)
+    sixfold += (end - x0) * (c0 * (2 * f0 + f1) + c1 * (f0 + 2 * f1))
+    record(running, end, sixfold / 6)
+    if (end === fx[j + 1]! && j < lastF) j++
+    x0 = end
+    c0 = c1
+    f0 = f1
   }
-  return sum
+  return sixfold / 6
 }
 
 function slopeOf(x: Float64Array, y: Float64Array, i: number): number {
