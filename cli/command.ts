@@ -15,9 +15,16 @@ export interface Command {
 }
 
 /** An option of a command; one without a default may be left out. */
-export type OptionDescription = { type: 'string'; default?: string } | { type: 'boolean'; default?: boolean }
+export type OptionDescription =
+  | { type: 'string'; default?: string }
+  | { type: 'string'; multiple: true; default: string[] }
+  | { type: 'boolean'; default?: boolean }
 
-type ValueOf<Option> = Option extends { type: 'string' } ? string : boolean
+type ValueOf<Option> = Option extends { multiple: true }
+  ? string[]
+  : Option extends { type: 'string' }
+    ? string
+    : boolean
 export type OptionValues<Options> = {
   [Name in keyof Options]: Options[Name] extends { default: unknown }
     ? ValueOf<Options[Name]>

@@ -67,6 +67,9 @@ const DeviceFile = z.strictObject({
   reflectance: ScanFile.optional(),
   sources: z.array(LightSource).default([]),
   layers: z.array(z.looseObject({})).optional(),
+  incidentIndex: z.number().positive().optional(),
+  exit: z.union([z.string().min(1), z.number().positive()]).optional(),
+  angleDeg: z.number().min(0).lt(90).optional(),
 })
 
 export type ScanConditions = z.infer<typeof ScanConditions>
@@ -79,19 +82,30 @@ export interface ScanReference {
   units: z.infer<typeof Units>
 }
 
+/** Thicknesses, absorbers and layers as they stand in the file. */
+export interface StatedOptics {
+  junctions: { name: string; thicknessNm?: number | undefined; pathFactor?: number | undefined; absorber?: unknown }[]
+  layers?: unknown[] | undefined
+  incidentIndex?: number | undefined
+  exit?: string | number | undefined
+  angleDeg?: number | undefined
+}
+
 export interface DescribedDevice {
   name: string
   wiring: 'series' | 'independent'
   junctions: { name: string; scan: ScanReference; conditions: ScanConditions }[]
   reflectance: ScanReference | null
   sources: LightSource[]
+  /** What was said about the optics, for a what-if; not looked at otherwise. */
+  optics: StatedOptics
   /** Paths in the file are relative to this folder. */
   folder: string
 }
 
 /** Reads a device file. @throws CommandError: one sentence with the file, the place and the reason. */
 export async function readDeviceFile(path: string): Promise<DescribedDevice> {
-  const { device, terminals, junctions, reflectance, sources } = await readJsonFile(path, DeviceFile)
+  const { device, terminals, junctions, reflectance, sources, ...optics } = await readJsonFile(path, DeviceFile)
   return {
     name: device,
     wiring: /^\s*4[- ]terminal/i.test(terminals) ? 'independent' : 'series',
@@ -105,6 +119,15 @@ export async function readDeviceFile(path: string): Promise<DescribedDevice> {
     })),
     reflectance: reflectance === undefined ? null : referenceOf(reflectance, {}),
     sources,
+    optics: {
+      ...optics,
+      junctions: junctions.map(({ name, thicknessNm, pathFactor, absorber }) => ({
+        name,
+        thicknessNm,
+        pathFactor,
+        absorber,
+      })),
+    },
     folder: dirname(path),
   }
 }

@@ -3,9 +3,10 @@ import { biasPlan } from './biasPlan.js'
 import type { Command, Output } from './command.js'
 import { CommandError } from './commandError.js'
 import { reduce } from './reduce.js'
+import { whatIf } from './whatIf.js'
 
 /** Every command. A new one is one file and one line here. */
-const COMMANDS: readonly Command[] = [analyse, biasPlan, reduce]
+const COMMANDS: readonly Command[] = [analyse, biasPlan, reduce, whatIf]
 
 /** Runs a command line; gives the exit code. */
 export async function main(args: readonly string[], output: Output): Promise<number> {
