@@ -134,6 +134,21 @@ describe('the same scan, written differently', () => {
   })
 })
 
+it('4.19: junctions that share the light of 280 to 1200 nm share 46.456 mA/cm², however they share it', () => {
+  const shares = fc.array(fc.double({ min: 0, max: 1, noNaN: true }), { minLength: 2, maxLength: 40 })
+  fc.assert(
+    fc.property(shares, (ofTop) => {
+      const wavelengthNm = ofTop.map((_, i) => 280 + (920 * i) / (ofTop.length - 1))
+      const top = shortCircuitCurrentDensity(makeCurve(wavelengthNm, ofTop), global)
+      const rest = ofTop.map((share) => 1 - share)
+      const bottom = shortCircuitCurrentDensity(makeCurve(wavelengthNm, rest), global)
+      expect(Math.min(top, bottom)).toBeGreaterThanOrEqual(0)
+      expect(Math.abs(top + bottom - 46.456)).toBeLessThan(0.01)
+    }),
+    { seed: 43, numRuns: 50 },
+  )
+})
+
 describe('shortCircuitCurrentDensity', () => {
   it('does not extrapolate: outside the scan nothing is collected', () => {
     expect(shortCircuitCurrentDensity(band(100, 200), global)).toBe(0)

@@ -49,6 +49,24 @@ describe('integrateProduct', () => {
     expect(integrateProduct(a, a, 330, 320)).toBe(0)
   })
 
+  it('passes whole intervals of either curve, and ends within one', () => {
+    // ∫ of x over 0…6 against a flat 2, shifted to 100: whichever curve has the points, and with limits between them.
+    const rising = makeCurve([100, 106], [0, 6])
+    const flat = makeCurve([99, 101, 101.5, 103, 104, 105, 107], [2, 2, 2, 2, 2, 2, 2])
+    const risingFinely = makeCurve([100, 100.5, 102, 103, 103.5, 104, 106], [0, 0.5, 2, 3, 3.5, 4, 6])
+    const flatRoughly = makeCurve([99, 103, 107], [2, 2, 2])
+    for (const [a, b] of [
+      [rising, flat],
+      [risingFinely, flatRoughly],
+      [risingFinely, flat],
+    ] as const) {
+      expect(integrateProduct(a, b)).toBeCloseTo(36, 12)
+      expect(integrateProduct(b, a)).toBeCloseTo(36, 12)
+      expect(integrateProduct(a, b, 101.2, 104)).toBeCloseTo(4 ** 2 - 1.2 ** 2, 12)
+      expect(integrateProduct(b, a, 103, 104.7)).toBeCloseTo(4.7 ** 2 - 3 ** 2, 12)
+    }
+  })
+
   it('takes a step as narrow as numbers allow', () => {
     const edge = 700.3
     const step = makeCurve([300, edge, edge + 2e-13, 900], [1, 1, 0, 0])

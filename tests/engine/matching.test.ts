@@ -18,11 +18,14 @@ describe('published devices (the currents of their EQE)', () => {
     expect(result.jLimMaCm2).toBe(jLim)
   })
 
-  it('4.3 equal currents limit together: no junction is picked', () => {
-    const result = matching([16.5, 16.5], 'series')
+  it.each([
+    ['4.3 all-perovskite of 28.5 %', 16.5],
+    ['4.4 all-perovskite of 30.6 %', 16.6],
+  ])('%s: equal currents limit together, no junction is picked', (_, current) => {
+    const result = matching([current, current], 'series')
     expect(result.limitingJunction).toBeNull()
     expect(result.limitingJunctions).toEqual([1, 2])
-    expect([result.mismatchPercent, result.gainOpenMaCm2, result.jMatchedMaCm2]).toEqual([0, 0, 16.5])
+    expect([result.mismatchPercent, result.gainOpenMaCm2, result.jMatchedMaCm2]).toEqual([0, 0, current])
   })
 })
 
