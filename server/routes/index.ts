@@ -11,8 +11,10 @@ import { projectsRouter } from './projects.js'
 import { rawPassesRouter } from './rawPasses.js'
 import { scanChecksRouter } from './scanChecks.js'
 import { scansRouter } from './scans.js'
+import { scenariosRouter } from './scenarios.js'
 import { sourceFilesRouter } from './sourceFiles.js'
 import { spectraRouter } from './spectra.js'
+import { whatIfRouter } from './whatIf.js'
 
 /** Every router. A new resource is one file and one line here. */
 export const ROUTERS: readonly MakeRouter[] = [
@@ -28,6 +30,8 @@ export const ROUTERS: readonly MakeRouter[] = [
   benchRouter,
   sourceFilesRouter,
   spectraRouter,
+  whatIfRouter,
+  scenariosRouter,
   administrationRouter,
   apiDocumentRouter,
 ]

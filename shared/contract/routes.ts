@@ -6,13 +6,16 @@ import * as biasSeries from './biasSeries.js'
 import * as devices from './devices.js'
 import * as jobs from './jobs.js'
 import * as matching from './matching.js'
+import * as materials from './materials.js'
 import * as projects from './projects.js'
 import * as rawPasses from './rawPasses.js'
 import type { Route } from './route.js'
 import * as scanChecks from './scanChecks.js'
 import * as scans from './scans.js'
+import * as scenarios from './scenarios.js'
 import * as spectra from './spectra.js'
 import * as unmixing from './unmixing.js'
+import * as whatIf from './whatIf.js'
 
 function routesOf(module: Record<string, unknown>): Route[] {
   return Object.values(module).filter(
@@ -35,5 +38,8 @@ export const ROUTES: readonly Route[] = [
   bench,
   jobs,
   spectra,
+  materials,
+  whatIf,
+  scenarios,
   administration,
 ].flatMap(routesOf)

@@ -11,6 +11,7 @@ const pass = { sourceFileId: uuid(), wavelength: { column: 0 }, signal: { magnit
 const reduction = { device: pass, reference: pass, detectorId: uuid() }
 const led = { kind: 'led', centreNm: 940, fwhmNm: 50, highestIrradianceWM2: 200 }
 const series = { name: 'Series', varied: 'irradiance', scanIds: [uuid(), uuid()] }
+const opticalJunction = { thicknessNm: 500, absorber: { material: 'si-green-2008' } }
 const password = 'a password that is long enough'
 
 /** A body that every route with a body takes, by the route's id; what it names does not exist. */
@@ -51,6 +52,9 @@ export const SAMPLE_BODIES: Record<string, unknown> = {
   createDetector: { name: 'Photodiode', content: { sourceFileId: uuid(), mapping } },
   updateDetector: { version: 1, name: 'Photodiode', content: { sourceFileId: uuid(), mapping } },
   createSpectrum: { sourceFileId: uuid(), name: 'Lamp', mapping },
+  saveWhatIfModel: { version: 0, description: { junctions: [opticalJunction, opticalJunction] } },
+  createScenario: { name: 'Thicker', reason: 'The top cell limits.', change: { '1.thicknessNm': 560 } },
+  updateScenario: { version: 1, name: 'Thicker', reason: 'The top cell limits.' },
   createAccount: { name: 'New person', email: 'new.person@lab.example' },
   updateAccountByAdministrator: { disabled: false },
 }

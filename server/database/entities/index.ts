@@ -16,10 +16,12 @@ import { RawMeasurement } from './RawMeasurement.js'
 import { ReadingMemory } from './ReadingMemory.js'
 import { Scan } from './Scan.js'
 import { ScanCheck } from './ScanCheck.js'
+import { Scenario } from './Scenario.js'
 import { SessionRecord } from './SessionRecord.js'
 import { SourceFile } from './SourceFile.js'
 import { Spectrum } from './Spectrum.js'
 import { User } from './User.js'
+import { WhatIfModel } from './WhatIfModel.js'
 
 /** Every entity. A new one is one file and one line here, and a migration. */
 export const ENTITIES = [
@@ -45,4 +47,6 @@ export const ENTITIES = [
   Job,
   BenchItem,
   RawMeasurement,
+  WhatIfModel,
+  Scenario,
 ]
