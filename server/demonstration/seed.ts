@@ -9,6 +9,7 @@ import { seedBench, seedBiasSeries } from './bench.js'
 import { inventedDevices, inventedScans, type InventedDevice } from './devices.js'
 import { decide, describe, makeScans, upload, type DescribedDevice } from './deeds.js'
 import { addDemonstrationPeople } from './people.js'
+import { seedScenarios } from './scenarios.js'
 import { FILE_STYLES, eqeFile, junctionFile, reflectanceFile } from './scanFiles.js'
 
 type People = Awaited<ReturnType<typeof addDemonstrationPeople>>
@@ -56,6 +57,7 @@ async function seedThicknessSplit(
       for (const scan of scans)
         await decide(database, experimentalist, scan, 'accepted', 'Well selected, repeat within 0.3 %.')
     if (index === 0) await seedBiasSeries(database, experimentalist, described, scans[1]!, SPLIT_MEASURED_ON)
+    if (index === 0) await seedScenarios(database, designer, described)
     if (index === 1) await excludeWideSpot(database, experimentalist, described)
   }
   await measure(database, experimentalist, await describe(database, designer, projectId, bad), 0, BAD_MEASURED_ON)

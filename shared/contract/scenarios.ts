@@ -17,6 +17,15 @@ const Figures = z.object({
   jLimMaCm2: z.number().nullable(),
   mismatchPercent: z.number().nullable(),
   gainOpenMaCm2: z.number().nullable(),
+  power: z
+    .object({
+      openCircuitV: z.number(),
+      fillFactor: z.number(),
+      powerMwCm2: z.number(),
+      efficiency: z.number().meta({ description: 'Fraction of the irradiance' }),
+    })
+    .nullable()
+    .meta({ description: 'An estimate for the stack in series; what it takes for granted is in the assumptions' }),
 })
 
 export const ScenarioResult = z

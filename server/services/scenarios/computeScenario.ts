@@ -7,6 +7,7 @@ import {
   seriesFigures,
   type Change,
   type OpticalModelName,
+  type PowerEstimate,
 } from '../../../shared/physics/whatIf/index.js'
 import { whatIfInput } from '../../../shared/whatIf/whatIfInput.js'
 import type { ChosenSpectrum } from '../matching/chosenSpectrum.js'
@@ -33,11 +34,12 @@ export function computeScenario(
   const isSeries = measured.terminals !== '4-terminal'
   try {
     const compiled = compileDevice(whatIfInput(optics.description, eqe, spectrum.curve, model))
-    const { junctions, currentsMaCm2, assumptions } = evaluate(compiled, change)
+    const measuredPower = evaluate(compiled, {}).power
+    const { junctions, currentsMaCm2, assumptions, power } = evaluate(compiled, change)
     return {
-      measured: figures([...compiled.measuredCurrentsMaCm2], isSeries),
+      measured: figures([...compiled.measuredCurrentsMaCm2], isSeries, measuredPower),
       changed: {
-        ...figures([...currentsMaCm2], isSeries),
+        ...figures([...currentsMaCm2], isSeries, power),
         continuedMaCm2: junctions.map((one) => one.continuedPartMaCm2),
         keptMeasuredNm: junctions.map((one) => one.keptMeasuredNm.map(([from, to]): [number, number] => [from, to])),
       },
@@ -50,9 +52,8 @@ export function computeScenario(
   }
 }
 
-function figures(currentsMaCm2: number[], isSeries: boolean) {
-  if (!isSeries)
-    return { currentsMaCm2, limitingJunctions: [], jLimMaCm2: null, mismatchPercent: null, gainOpenMaCm2: null }
+function figures(currentsMaCm2: number[], isSeries: boolean, power: PowerEstimate | null): ScenarioResult['measured'] {
+  if (!isSeries) return { currentsMaCm2, ...NOT_IN_SERIES }
   const { limitingJunctions, limitingCurrentMaCm2, mismatch, gainStillOpenMaCm2 } = seriesFigures(currentsMaCm2)
   return {
     currentsMaCm2,
@@ -60,5 +61,14 @@ function figures(currentsMaCm2: number[], isSeries: boolean) {
     jLimMaCm2: limitingCurrentMaCm2,
     mismatchPercent: Number.isFinite(mismatch) ? 100 * mismatch : null,
     gainOpenMaCm2: gainStillOpenMaCm2,
+    power,
   }
+}
+
+const NOT_IN_SERIES = {
+  limitingJunctions: [],
+  jLimMaCm2: null,
+  mismatchPercent: null,
+  gainOpenMaCm2: null,
+  power: null,
 }

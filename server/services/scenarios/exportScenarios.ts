@@ -31,6 +31,9 @@ function comparison(junctions: number, scenarios: readonly ScenarioReply[]): Cel
     'J_lim (mA/cm²)',
     'mismatch (%)',
     'gain still open (mA/cm²)',
+    'V_oc estimate (V)',
+    'FF estimate (%)',
+    'efficiency estimate (%)',
   ]
   const header = [
     'scenario',
@@ -66,8 +69,22 @@ function rowOf({ result, ...scenario }: ScenarioReply): Cell[] {
   ]
 }
 
-function cells(figures: ScenarioResult['measured']): Cell[] {
-  return [...figures.currentsMaCm2, figures.jLimMaCm2, figures.mismatchPercent, figures.gainOpenMaCm2]
+function cells({
+  currentsMaCm2,
+  jLimMaCm2,
+  mismatchPercent,
+  gainOpenMaCm2,
+  power,
+}: ScenarioResult['measured']): Cell[] {
+  return [
+    ...currentsMaCm2,
+    jLimMaCm2,
+    mismatchPercent,
+    gainOpenMaCm2,
+    power && power.openCircuitV,
+    power && 100 * power.fillFactor,
+    power && 100 * power.efficiency,
+  ]
 }
 
 /** A text that a spreadsheet would run as a formula is kept a text. */

@@ -15,6 +15,7 @@ import { listBiasSeries } from '../../../server/services/biasSeries/biasSeries.j
 import { listDevices } from '../../../server/services/matching/listDevices.js'
 import { listProjects } from '../../../server/services/projects/listProjects.js'
 import { listScans } from '../../../server/services/scans/listScans.js'
+import { listScenarios } from '../../../server/services/scenarios/listScenarios.js'
 import { listSourceFiles } from '../../../server/services/scans/listSourceFiles.js'
 import { emptyDatabase, type EmptyDatabase } from '../../support/database.js'
 
@@ -118,6 +119,20 @@ test('scans carry conditions and decisions, and one file waits to be confirmed',
   const waiting = await listSourceFiles(database, designer, projectId, { limit: 200, state: 'uploaded' })
   expect(waiting.items.map((file) => file.name)).toEqual(['FT-24-04_Top_second-pass.csv'])
   expect(await dataSource.manager.count(SourceFile)).toBe(18)
+})
+
+test('the designer put two questions to the thinnest tandem, and both still hold', async () => {
+  const [thinnest] = await devicesOf('thickness')
+  const { items } = await listScenarios(database, designer, projectNamed('thickness'), thinnest!.device.id)
+  expect(items.map(({ name, stale }) => [name, stale.changed])).toEqual([
+    ['Top cell 440 nm', []],
+    ['Top gap 1.66 eV', []],
+  ])
+  for (const { result, madeBy } of items) {
+    expect(result.measured.limitingJunctions).toEqual([1])
+    expect(result.changed.jLimMaCm2!).toBeGreaterThan(result.measured.jLimMaCm2!)
+    expect(madeBy.name).toBe(designer.name)
+  }
 })
 
 test('a database with people in it is left alone', async () => {

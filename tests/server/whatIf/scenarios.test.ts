@@ -84,6 +84,13 @@ describe('a scenario', () => {
     const scenario = await save({ ...THICKER, claimed: float64Bits(currents) })
     expect(scenario.result.changed.currentsMaCm2).toEqual(currents)
     expect(scenario).toMatchObject({ ...THICKER, model: 'beer-lambert', stale: { changed: [] }, version: 1 })
+    const { measured, changed } = scenario.result
+    expect(changed.mismatchPercent).toBeCloseTo(
+      (100 * (Math.max(...currents) - changed.jLimMaCm2!)) / changed.jLimMaCm2!,
+      9,
+    )
+    expect(changed.power!.efficiency).not.toBe(measured.power!.efficiency)
+    expect(changed.power!.fillFactor).toBeGreaterThan(0.7)
     const row = await inDatabase(scenario.id)
     expect(row.change).toEqual(CHANGE)
     expect(float64Bits(row.result.changed.currentsMaCm2)).toBe(float64Bits(currents))
