@@ -122,7 +122,7 @@ test('scans carry conditions and decisions, and one file waits to be confirmed',
 })
 
 test('the designer put two questions to the thinnest tandem, and both still hold', async () => {
-  const [thinnest] = await devicesOf('thickness')
+  const thinnest = (await devicesOf('thickness')).find(({ device }) => device.name === 'Split 360 nm')
   const { items } = await listScenarios(database, designer, projectNamed('thickness'), thinnest!.device.id)
   expect(items.map(({ name, stale }) => [name, stale.changed])).toEqual([
     ['Top cell 440 nm', []],
