@@ -78,5 +78,5 @@ async function makeLink(work: Work, publicUrl: string, user: User, validHours: n
     createdAt: now,
     expiresAt: new Date(now.getTime() + validHours * 3_600_000),
   })
-  return `${publicUrl}/reset-password?token=${token}`
+  return `${publicUrl}/reset-password/${token}`
 }
