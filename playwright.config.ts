@@ -11,6 +11,7 @@ export default defineConfig({
   timeout: 90_000,
   expect: { timeout: 15_000 },
   use: {
+    actionTimeout: 15_000,
     baseURL: process.env['TIERLIGHT_TEST_ADDRESS'],
     viewport: { width: 1280, height: 900 },
     locale: 'en-GB',

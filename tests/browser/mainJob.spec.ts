@@ -3,7 +3,7 @@ import { makeCurve } from '../../shared/physics/curve.js'
 import { shortCircuitCurrentDensity } from '../../shared/physics/currents.js'
 import { referenceSpectrum } from '../../shared/physics/spectrum.js'
 import { bottomCsv, bottomEqe, lampTsv, reflectanceWorkbook, topCsv, topEqe, wavelengthsNm } from './measurements.js'
-import { api, signInAs } from './people.js'
+import { api, choose, signInAs } from './people.js'
 
 /** What the page has to say, from the same curves through the engine. */
 function currentOf(eqe: (nm: number) => number, spectrum: 'AM1.5G' | 'AM0'): string {
@@ -21,9 +21,9 @@ test('a group goes from its own files to the limiting junction', async ({ page, 
     await page.getByRole('button', { name: /make the project|make project/i }).click()
     await expect(page.getByRole('heading', { name: projectName })).toBeVisible()
     await page.getByRole('link', { name: 'People' }).click()
-    await page.getByLabel('Mail address').fill('nils@fennmoor.example')
-    await page.getByLabel('experimentalist').check()
-    await page.getByRole('button', { name: /invite/i }).click()
+    await page.getByLabel('E-mail address').fill('nils@fennmoor.example')
+    await choose(page, page.getByRole('combobox', { name: 'Roles' }), 'experimentalist')
+    await page.getByRole('button', { name: 'Invite', exact: true }).click()
     await expect(page.getByRole('cell', { name: 'nils@fennmoor.example' })).toBeVisible()
   })
 
@@ -94,8 +94,7 @@ test('a group goes from its own files to the limiting junction', async ({ page, 
     await page.mouse.move(box.x + box.width / 3, box.y + box.height / 2)
     await expect(page.locator('.readout').first()).toContainText(/\d+ nm/)
 
-    await page.getByLabel('Spectrum').click()
-    await page.getByRole('option', { name: /AM0/ }).click()
+    await choose(page, page.getByRole('combobox', { name: 'Spectrum' }), /AM0/)
     await expect(page).toHaveURL(/spectrum=AM0/)
     await expect(currents.getByRole('row', { name: /1 top/ })).toContainText(currentOf(topEqe, 'AM0').slice(0, 4))
   })

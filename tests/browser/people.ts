@@ -1,4 +1,4 @@
-import type { Page } from '@playwright/test'
+import type { Locator, Page } from '@playwright/test'
 import { DEMONSTRATION_PASSWORD, DEMONSTRATION_PEOPLE } from '../../server/demonstration/signIns.js'
 
 type Key = (typeof DEMONSTRATION_PEOPLE)[number]['key']
@@ -37,4 +37,11 @@ export async function demonstration(
     device: (name) =>
       `/projects/${project.id}/devices/${devices.items.find((one) => one.device.name === name)!.device.id}`,
   }
+}
+
+/** Chooses from a list field by the keyboard, as its own markup covers the field for a pointer. */
+export async function choose(page: Page, field: Locator, option: string | RegExp): Promise<void> {
+  await field.press('ArrowDown')
+  await page.getByRole('option', { name: option }).click()
+  await page.keyboard.press('Escape')
 }
