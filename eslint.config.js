@@ -28,7 +28,7 @@ export default tseslint.config(
     languageOptions: { globals: { ...globals.browser } },
   },
   {
-    files: ['server/**', 'cli/**', 'bench/**', 'examples/**', 'tests/**', '*.config.*'],
+    files: ['server/**', 'cli/**', 'bench/**', 'examples/**', 'docs/**', 'tests/**', '*.config.*'],
     languageOptions: { globals: { ...globals.node } },
   },
   {
