@@ -34,7 +34,8 @@ export default tseslint.config(
   {
     plugins: { 'import-x': importX },
     settings: {
-      'import-x/extensions': ['.ts', '.vue', '.js'],
+      'import-x/extensions': ['.ts', '.js'],
+      'import-x/ignore': [String.raw`\.vue$`],
       'import-x/parsers': { '@typescript-eslint/parser': ['.ts'] },
       'import-x/resolver-next': [
         createNodeResolver({ extensions: ['.ts', '.vue', '.js'], extensionAlias: { '.js': ['.ts', '.js'] } }),
@@ -48,7 +49,10 @@ export default tseslint.config(
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
     },
   },
-  { files: ['cli/**', 'bench/**', 'examples/**', 'server/setup/**', 'tests/support/**'], rules: { 'no-console': 'off' } },
+  {
+    files: ['cli/**', 'bench/**', 'examples/**', 'server/setup/**', 'tests/support/**'],
+    rules: { 'no-console': 'off' },
+  },
 
   // One direction only. `shared` imports neither side; the engine imports only data and itself.
   wall(
@@ -57,16 +61,28 @@ export default tseslint.config(
     'The engine is pure: it imports only itself, shared/data and the linear programme solver yalps.',
   ),
   wall(['shared/data/**/*.ts'], '^(?!\\.{1,2}/)|/contract/|/server/|/src/|/physics/', 'Data import nothing.'),
+  wall(['shared/contract/**/*.ts'], '^(?!\\.{1,2}/|zod$)|/server/|/src/|/physics/', 'The contract imports only zod.'),
   wall(
-    ['shared/contract/**/*.ts'],
-    '^(?!\\.{1,2}/|zod$)|/server/|/src/|/physics/',
-    'The contract imports only zod.',
+    ['src/**/*.{ts,vue}'],
+    '/server/|^node:',
+    'The client reaches the server only through src/api and the contract.',
   ),
-  wall(['src/**/*.{ts,vue}'], '/server/|^node:', 'The client reaches the server only through src/api and the contract.'),
-  wall(['src/views/**', 'src/components/**', 'src/charts/**', 'src/layouts/**'], '/server/|^node:|/api/', 'Views and components use composables, not the api.'),
+  wall(
+    ['src/views/**', 'src/components/**', 'src/charts/**', 'src/layouts/**'],
+    '/server/|^node:|/api/',
+    'Views and components use composables, not the api.',
+  ),
   wall(['server/**/*.ts'], '/src/|^typeorm$|^mysql2', 'Only server/database imports the ORM.', ['server/database/**']),
-  wall(['server/routes/**/*.ts'], '/src/|^typeorm$|^mysql2|/database/', 'Routes talk to services, not to the database.'),
+  wall(
+    ['server/routes/**/*.ts'],
+    '/src/|^typeorm$|^mysql2|/database/',
+    'Routes talk to services, not to the database.',
+  ),
   wall(['server/database/**/*.ts'], '/src/|/services/|/routes/', 'The database layer knows nothing above it.'),
-  wall(['server/services/**/*.ts'], '/src/|^typeorm$|^mysql2|/routes/|^express$', 'Services know neither HTTP nor the ORM.'),
+  wall(
+    ['server/services/**/*.ts'],
+    '/src/|^typeorm$|^mysql2|/routes/|^express$',
+    'Services know neither HTTP nor the ORM.',
+  ),
   prettier,
 )

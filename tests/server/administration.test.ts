@@ -36,7 +36,7 @@ describe('accounts', () => {
 
     const [mail, ...others] = await manager().findBy(OutboxMail, { recipient: email })
     expect(others).toEqual([])
-    const token = /\?token=([\w-]+)/.exec(mail!.text)![1]!
+    const token = /reset-password\/([\w-]+)/.exec(mail!.text)![1]!
     await browser.put(`/api/password-resets/${token}`).send({ newPassword: 'my own password, long' }).expect(200)
     await browser.post('/api/session').send({ email, password: 'my own password, long' }).expect(200)
   })

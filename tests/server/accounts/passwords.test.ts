@@ -19,7 +19,7 @@ async function tokenFor(email: string): Promise<string> {
     expect(mails).toHaveLength(1)
     return mails
   })
-  return /\?token=([\w-]+)/.exec(mail!.text)![1]!
+  return /reset-password\/([\w-]+)/.exec(mail!.text)![1]!
 }
 
 describe('changing the password', () => {
